@@ -1,0 +1,141 @@
+package hydraulics
+
+import (
+	"fmt"
+	"math"
+	"strings"
+)
+
+// Network is a set of points joined by runs and pumps, filled with one water.
+type Network struct {
+	Points    []Point
+	Runs      []Run
+	Pumps     []PumpLink
+	Viscosity float64 // kinematic viscosity of the water, m2/s
+}
+
+// Point is a place where runs and pumps meet, or where the network meets the outside.
+type Point struct {
+	Name  string
+	Fixed bool    // the head is given: the sea, the overboard, a tank
+	Head  float64 // total head of a fixed point, m
+	Draw  float64 // flow taken out at a point that is not fixed, m3/s; negative for flow put in
+}
+
+// Run is a length of one pipe with its fittings, from one point to another.
+type Run struct {
+	Name     string
+	From, To int // indices in Network.Points
+	Pipe     Pipe
+	Fittings []Fitting
+	Shut     bool // a closed valve: nothing passes
+}
+
+// NonReturn says whether a fitting of the run lets water pass from From to To only.
+func (r Run) NonReturn() bool {
+	for _, f := range r.Fittings {
+		if f.NonReturn {
+			return true
+		}
+	}
+	return false
+}
+
+// PumpLink is a pump in the network. An idle pump is shut; a running one never passes water backwards.
+type PumpLink struct {
+	Name     string
+	From, To int // indices in Network.Points
+	Drive    HeadSource
+	Running  bool
+}
+
+// HeadSource is a pump as the network sees it: the head (m) it adds at a flow (m3/s, 0 or more), and the derivative
+// of that head with respect to flow. It must answer at every flow, beyond its data by some falling continuation.
+type HeadSource interface {
+	Head(flow float64) (head, slope float64)
+}
+
+// Check returns the first thing that makes the network unsound: an index that is none, a pipe or fitting that
+// makes no sense, a point that no path of runs and pumps, open or shut, joins to a fixed one.
+func (n *Network) Check() error {
+	if !(n.Viscosity > 0) {
+		return fmt.Errorf("kinematic viscosity %g m2/s, want more than 0", n.Viscosity)
+	}
+	known := func(i int) bool { return 0 <= i && i < len(n.Points) }
+	joined := newPartition(len(n.Points))
+	for _, r := range n.Runs {
+		if !known(r.From) || !known(r.To) || r.From == r.To {
+			return fmt.Errorf("run %s: ends at no two points", r.Name)
+		}
+		if err := r.Pipe.Check(); err != nil {
+			return fmt.Errorf("run %s: %w", r.Name, err)
+		}
+		for _, f := range r.Fittings {
+			if err := f.Check(); err != nil {
+				return fmt.Errorf("run %s: %s: %w", r.Name, f.Name, err)
+			}
+		}
+		joined.join(r.From, r.To)
+	}
+	for _, p := range n.Pumps {
+		if !known(p.From) || !known(p.To) || p.From == p.To || p.Drive == nil {
+			return fmt.Errorf("pump %s: stands between no two points, or has no curve", p.Name)
+		}
+		joined.join(p.From, p.To)
+	}
+	held := make([]bool, len(n.Points))
+	for i, p := range n.Points {
+		if p.Fixed {
+			if math.IsNaN(p.Head) || math.IsInf(p.Head, 0) {
+				return fmt.Errorf("point %s: its head is not known", p.Name)
+			}
+			held[joined.root(i)] = true
+		}
+	}
+	var loose []string
+	for i, p := range n.Points {
+		if !held[joined.root(i)] {
+			loose = append(loose, p.Name)
+		}
+	}
+	if loose != nil {
+		return &CutOff{Points: loose}
+	}
+	return nil
+}
+
+// CutOff tells of points whose head nothing holds: no open path joins them to the sea, an overboard or a tank,
+// while water is driven or drawn among them.
+type CutOff struct {
+	Points []string
+}
+
+// Error names the points.
+func (e *CutOff) Error() string {
+	return "no path to any sea, overboard or tank point from " + strings.Join(e.Points, ", ")
+}
+
+// partition is a set of disjoint sets of points.
+type partition []int
+
+func newPartition(n int) partition {
+	p := make(partition, n)
+	p.reset()
+	return p
+}
+
+func (p partition) reset() {
+	for i := range p {
+		p[i] = i
+	}
+}
+
+func (p partition) root(i int) int {
+	for p[i] != i {
+		p[i] = p[p[i]] // halve the path on the way
+		i = p[i]
+	}
+	return i
+}
+
+func (p partition) join(i, j int) { p[p.root(i)] = p.root(j) }

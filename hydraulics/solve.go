@@ -1,0 +1,583 @@
+package hydraulics
+
+import (
+	"fmt"
+	"math"
+
+	"gonum.org/v1/gonum/blas"
+	"gonum.org/v1/gonum/blas/blas64"
+	"gonum.org/v1/gonum/lapack/lapack64"
+)
+
+// Solver finds the flows and heads of one network. It may be used again and again, each time starting from the
+// flows found last; it must not be used by two goroutines at once.
+//
+// Method: the global gradient method of E. Todini and S. Pilati (A gradient algorithm for the analysis of pipe
+// networks, in: Computer Applications in Water Supply, vol. 1, 1988), Newton's method on flows and heads together,
+// each step one symmetric positive definite system in the heads. Its flows satisfy continuity after the first
+// step, and among such flows the answer is the least of the content, the sum of the integrals of the losses
+// (W. J. Cherry, 1951; M. Collins and others, 1978, both from memory); a step that would overshoot that least is
+// shortened, so that the method converges from any start where every loss grows with flow.
+//
+// A non-return fitting and a running pump are first given a stiff resistance to reverse flow; those that then hold
+// water back are shut, one by one, and the rest solved again without the artifice.
+type Solver struct {
+	network *Network
+	links   []link // runs, then pumps
+
+	row    []int // row of the matrix of each point, -1 for a fixed one or one cut off
+	order  []int // points in the order of their rows
+	band   blas64.SymmetricBand
+	right  blas64.General
+	groups partition
+
+	flow, next, loss, weight []float64 // by link; weight is 1 over the slope of the loss
+	shut                     []bool    // by link: passes nothing in this solution
+	head, draw               []float64 // by point
+	held                     []bool    // by point: scratch of isolate
+}
+
+// link is a run or a pump, ready to be solved.
+type link struct {
+	from, to int
+	friction frictionLaw
+	fittings []lossLaw // at most one with exponent 2: those are added up
+	drive    HeadSource
+	oneWay   float64 // resistance to reverse flow, m per m3/s; 0 where water may pass both ways
+	start    float64 // first guess of the flow, m3/s
+}
+
+// Stiff resistances to reverse flow, m per m3/s. A non-return fitting holds more than a pump, so that of the two in
+// a line the fitting is the one that closes, and the pump stands at its shut-off head.
+const (
+	reversePump = 1e6
+	reverseRun  = 1e9
+)
+
+// A run with no length and no fittings passes any flow at no loss; this resistance, 1e-6 m at 0.1 m3/s, decides how
+// two such runs side by side share their flow.
+const leastResistance = 1e-5
+
+// NewSolver checks the network and prepares its solution.
+func NewSolver(n *Network) (*Solver, error) {
+	if err := n.Check(); err != nil {
+		return nil, err
+	}
+	s := &Solver{network: n}
+	for _, r := range n.Runs {
+		s.links = append(s.links, newRunLink(r, n.Viscosity))
+	}
+	for _, p := range n.Pumps {
+		s.links = append(s.links, link{from: p.From, to: p.To, drive: p.Drive, oneWay: reversePump, start: 0.05})
+	}
+	links, points := len(s.links), len(n.Points)
+	s.flow, s.next = make([]float64, links), make([]float64, links)
+	s.loss, s.weight = make([]float64, links), make([]float64, links)
+	s.shut = make([]bool, links)
+	s.head, s.draw = make([]float64, points), make([]float64, points)
+	s.held, s.row = make([]bool, points), make([]int, points)
+	s.groups = newPartition(points)
+	s.number()
+	for i, l := range s.links {
+		s.flow[i] = l.start
+	}
+	return s, nil
+}
+
+// newRunLink adds up a run's losses for water of the kinematic viscosity nu.
+func newRunLink(r Run, nu float64) link {
+	l := link{from: r.From, to: r.To, friction: r.Pipe.law(nu), start: r.Pipe.Area()} // at 1 m/s
+	square := lossLaw{exponent: 2}
+	for _, f := range r.Fittings {
+		law := f.law(r.Pipe, nu)
+		if law.exponent != 2 {
+			l.fittings = append(l.fittings, law)
+			continue
+		}
+		square.power += law.power
+		square.linear += law.linear
+		square.soft = law.soft
+	}
+	if l.friction.scale == 0 && square.power == 0 && square.linear == 0 && l.fittings == nil {
+		square.linear = leastResistance
+	}
+	if square.power != 0 || square.linear != 0 {
+		l.fittings = append(l.fittings, square)
+	}
+	if r.NonReturn() {
+		l.oneWay = reverseRun
+	}
+	return l
+}
+
+// number gives the points that are not fixed their rows and makes the matrix.
+func (s *Solver) number() {
+	free := make([]int, 0, len(s.network.Points)) // points that are not fixed
+	local := make([]int, len(s.network.Points))
+	for i, p := range s.network.Points {
+		if !p.Fixed {
+			local[i] = len(free)
+			free = append(free, i)
+		}
+	}
+	neighbours := make([][]int, len(free))
+	for _, l := range s.links {
+		if !s.network.Points[l.from].Fixed && !s.network.Points[l.to].Fixed {
+			a, b := local[l.from], local[l.to]
+			neighbours[a] = append(neighbours[a], b)
+			neighbours[b] = append(neighbours[b], a)
+		}
+	}
+	s.order = bandOrder(neighbours)
+	for row, i := range s.order {
+		s.order[row] = free[i]
+		s.row[free[i]] = row
+	}
+	width := 0
+	for _, l := range s.links {
+		if !s.network.Points[l.from].Fixed && !s.network.Points[l.to].Fixed {
+			width = max(width, s.row[l.from]-s.row[l.to], s.row[l.to]-s.row[l.from])
+		}
+	}
+	size := len(s.order)
+	s.band = blas64.SymmetricBand{Uplo: blas.Upper, N: size, K: width, Stride: width + 1, Data: make([]float64, size*(width+1))}
+	s.right = blas64.General{Rows: size, Cols: 1, Stride: 1, Data: make([]float64, size)}
+}
+
+// Solution is the state of a network.
+type Solution struct {
+	Heads     []float64 // total head of each point, m; NaN where shut valves cut the point off from every fixed head
+	RunFlows  []float64 // m3/s, positive from From to To
+	PumpFlows []float64 // m3/s; 0 for an idle pump and for one held shut by its non-return
+
+	Rounds       int     // Newton steps taken
+	MassResidual float64 // greatest imbalance of flow at a point, over the greatest flow
+	HeadResidual float64 // greatest difference between a link's loss and the heads at its ends, m
+	Worst        string  // the run or pump of HeadResidual
+}
+
+// NotConverged tells how far a solution came that did not settle.
+type NotConverged struct {
+	Rounds int
+	Step   float64 // last change of the flow that moved most, m3/s
+	Where  string  // the run or pump that moved most
+}
+
+// Error says how far it came.
+func (e *NotConverged) Error() string {
+	return fmt.Sprintf("no convergence in %d rounds: the flow in %s still moves by %.3g m3/h a round", e.Rounds, e.Where, e.Step*3600)
+}
+
+const (
+	greatestRounds = 200
+	stepTolerance  = 1e-10 // of the greatest flow
+	roundingUnits  = 16    // of the last place of the heads, turned into flow: below that a step is noise
+	heldBack       = 1e-9  // m: what a non-return must hold to count as shut
+)
+
+// Solve finds the flows and heads. The solution is written into out, whose slices are used again where they are
+// large enough. The error is a *CutOff or a *NotConverged.
+func (s *Solver) Solve(out *Solution) error { return s.solve(out, -1, 0) }
+
+// SolveForced does the same with the flow (m3/s) of one pump given: its curve is set aside, and the difference of
+// the heads across it is what the system asks of it. The pump need not be running.
+func (s *Solver) SolveForced(out *Solution, pump int, flow float64) error {
+	return s.solve(out, pump, flow)
+}
+
+func (s *Solver) solve(out *Solution, forced int, forcedFlow float64) error {
+	n := s.network
+	for i, p := range n.Points {
+		s.draw[i], s.head[i] = p.Draw, p.Head
+	}
+	for i, r := range n.Runs {
+		s.shut[i] = r.Shut
+	}
+	for i, p := range n.Pumps {
+		k := len(n.Runs) + i
+		s.shut[k] = !p.Running
+		if i == forced {
+			s.shut[k] = true
+			s.draw[p.From] += forcedFlow
+			s.draw[p.To] -= forcedFlow
+		}
+	}
+	rounds := 0
+	for {
+		if err := s.isolate(); err != nil {
+			return err
+		}
+		if err := s.iterate(&rounds); err != nil {
+			return err
+		}
+		k := s.mostHeldBack()
+		if k < 0 {
+			break
+		}
+		s.shut[k] = true
+	}
+	s.report(out, forced, forcedFlow)
+	out.Rounds = rounds
+	return nil
+}
+
+// isolate finds the points that shut links cut off from every fixed head. Such points have no head and their links
+// no flow; where water is driven or drawn among them there is no answer.
+func (s *Solver) isolate() error {
+	n := s.network
+	s.groups.reset()
+	for k, l := range s.links {
+		if !s.shut[k] {
+			s.groups.join(l.from, l.to)
+		}
+	}
+	for i := range s.held {
+		s.held[i] = false
+	}
+	for i, p := range n.Points {
+		if p.Fixed {
+			s.held[s.groups.root(i)] = true
+		}
+	}
+	loose := func(point int) bool { return !s.held[s.groups.root(point)] }
+	stuck := -1
+	for i := range n.Points {
+		if !loose(i) {
+			if !n.Points[i].Fixed && math.IsNaN(s.head[i]) {
+				s.head[i] = 0
+			}
+			continue
+		}
+		s.head[i] = math.NaN()
+		if s.draw[i] != 0 {
+			stuck = i
+		}
+	}
+	for k, l := range s.links {
+		if s.shut[k] {
+			continue
+		}
+		if loose(l.from) {
+			if l.drive != nil {
+				stuck = l.from
+			}
+			s.shut[k] = true
+		}
+	}
+	if stuck < 0 {
+		return nil
+	}
+	cut := &CutOff{}
+	group := s.groups.root(stuck)
+	for i, p := range n.Points {
+		if s.groups.root(i) == group {
+			cut.Points = append(cut.Points, p.Name)
+		}
+	}
+	return cut
+}
+
+// iterate takes Newton steps until they are lost in rounding or below stepTolerance.
+func (s *Solver) iterate(rounds *int) error {
+	for k := range s.links {
+		if s.shut[k] {
+			s.flow[k] = 0
+		}
+	}
+	var step float64
+	var worst int
+	for first := true; *rounds < greatestRounds; first = false {
+		*rounds++
+		s.linearise()
+		if err := s.step(); err != nil {
+			return err
+		}
+		step, worst = s.stepSize()
+		settled := worst < 0
+		if settled {
+			s.balance()
+		}
+		share := 1.0
+		if !first && !settled { // before the first step the flows satisfy no continuity, and the content says nothing
+			share = s.shorten()
+		}
+		for k := range s.flow {
+			if share == 1 {
+				s.flow[k] = s.next[k] // exactly: continuity must not be lost to rounding
+			} else {
+				s.flow[k] += share * (s.next[k] - s.flow[k])
+			}
+		}
+		if settled {
+			return nil
+		}
+	}
+	return &NotConverged{Rounds: *rounds, Step: step, Where: s.name(worst)}
+}
+
+// linearise finds the loss and the weight of every open link at its present flow.
+func (s *Solver) linearise() {
+	for k := range s.links {
+		if s.shut[k] {
+			s.loss[k], s.weight[k] = 0, 0
+			continue
+		}
+		loss, slope := s.links[k].lossAt(s.flow[k])
+		s.loss[k], s.weight[k] = loss, 1/slope
+	}
+}
+
+// leastDriveSlope keeps Newton's matrix positive where a pump curve is flat or droops, m per m3/s. It changes the
+// way to the answer, not the answer.
+const leastDriveSlope = 1.0
+
+// lossAt returns the head a link takes at a flow, negative for a pump, and its slope.
+func (l *link) lossAt(flow float64) (loss, slope float64) {
+	if l.drive != nil {
+		loss, slope = l.drive.Head(math.Max(flow, 0))
+		loss, slope = -loss, math.Max(-slope, leastDriveSlope)
+	} else {
+		loss, slope = l.friction.loss(flow)
+		for _, f := range l.fittings {
+			h, dh := f.loss(flow)
+			loss += h
+			slope += dh
+		}
+	}
+	if flow < 0 && l.oneWay > 0 {
+		loss += l.oneWay * flow
+		slope += l.oneWay
+	}
+	return loss, slope
+}
+
+// step solves for the heads of the linearised network and puts the flows that go with them into next.
+func (s *Solver) step() error {
+	if len(s.order) > 0 {
+		data, right, stride := s.band.Data, s.right.Data, s.band.Stride
+		clear(data)
+		for row, point := range s.order {
+			right[row] = -s.draw[point]
+			if math.IsNaN(s.head[point]) {
+				data[row*stride] = 1 // cut off: kept in the matrix as a row of its own
+				right[row] = 0
+			}
+		}
+		for k := range s.links {
+			w := s.weight[k]
+			if w == 0 {
+				continue
+			}
+			from, to := s.links[k].from, s.links[k].to
+			constant := s.flow[k] - w*s.loss[k] // next = constant + w (Hfrom - Hto)
+			s.addToBand(from, to, -constant, w)
+			s.addToBand(to, from, constant, w)
+		}
+		triangle, ok := lapack64.Pbtrf(s.band)
+		if !ok {
+			return fmt.Errorf("hydraulics: the matrix of the network is not positive definite")
+		}
+		lapack64.Pbtrs(triangle, s.right)
+		for row, point := range s.order {
+			if !math.IsNaN(s.head[point]) {
+				s.head[point] = right[row]
+			}
+		}
+	}
+	for k := range s.links {
+		if w := s.weight[k]; w > 0 {
+			l := &s.links[k]
+			s.next[k] = s.flow[k] - w*(s.loss[k]-(s.head[l.from]-s.head[l.to]))
+		} else {
+			s.next[k] = 0
+		}
+	}
+	return nil
+}
+
+// addToBand adds one end of a link of weight w to the equation of its point.
+func (s *Solver) addToBand(point, other int, inflow, w float64) {
+	points := s.network.Points
+	if points[point].Fixed {
+		return
+	}
+	row := s.row[point]
+	s.right.Data[row] += inflow
+	s.band.Data[row*s.band.Stride] += w
+	if points[other].Fixed {
+		s.right.Data[row] += w * points[other].Head
+		return
+	}
+	if column := s.row[other]; column > row {
+		s.band.Data[row*s.band.Stride+column-row] -= w
+	}
+}
+
+// stepSize returns the change of the flow that moves most beyond its tolerance, and its link; -1 where none does.
+func (s *Solver) stepSize() (step float64, worst int) {
+	greatestFlow, greatestHead := 0.0, 0.0
+	for _, q := range s.next {
+		greatestFlow = math.Max(greatestFlow, math.Abs(q))
+	}
+	for _, h := range s.head {
+		if math.Abs(h) > greatestHead { // false for NaN
+			greatestHead = math.Abs(h)
+		}
+	}
+	const epsilon = 0x1p-52
+	worst = -1
+	for k := range s.links {
+		change := math.Abs(s.next[k] - s.flow[k])
+		floor := roundingUnits * epsilon * greatestHead * s.weight[k]
+		if !(change <= stepTolerance*greatestFlow+floor+1e-13) && !(change <= step) {
+			step, worst = change, k
+		}
+	}
+	return step, worst
+}
+
+// balance takes out of next what rounding has put into the points' balance of flow, with the matrix factored last.
+func (s *Solver) balance() {
+	if len(s.order) == 0 {
+		return
+	}
+	right := s.right.Data
+	for row, point := range s.order {
+		right[row] = -s.draw[point]
+		if math.IsNaN(s.head[point]) {
+			right[row] = 0
+		}
+	}
+	for k, l := range s.links {
+		if !s.network.Points[l.from].Fixed {
+			right[s.row[l.from]] -= s.next[k]
+		}
+		if !s.network.Points[l.to].Fixed {
+			right[s.row[l.to]] += s.next[k]
+		}
+	}
+	lapack64.Pbtrs(blas64.TriangularBand{Uplo: s.band.Uplo, Diag: blas.NonUnit, N: s.band.N, K: s.band.K, Stride: s.band.Stride, Data: s.band.Data}, s.right)
+	correction := func(point int) float64 {
+		if s.network.Points[point].Fixed {
+			return 0
+		}
+		return right[s.row[point]]
+	}
+	for k, l := range s.links {
+		s.next[k] += s.weight[k] * (correction(l.from) - correction(l.to))
+	}
+}
+
+// shorten returns the share of the step from flow to next to take: all of it, unless that climbs the content's far
+// side; then one near its least along the step.
+func (s *Solver) shorten() float64 {
+	const enough = 0.5 // of the slope at the start
+	start := s.contentSlope(0)
+	if !(start < 0) {
+		return 1 // rounding: the step is as good as none
+	}
+	end := s.contentSlope(1)
+	if end <= -enough*start {
+		return 1
+	}
+	low, high, lowSlope, highSlope := 0.0, 1.0, start, end
+	share := 1.0
+	for range 40 {
+		share = low - lowSlope*(high-low)/(highSlope-lowSlope)
+		share = math.Min(math.Max(share, low+0.05*(high-low)), high-0.05*(high-low))
+		slope := s.contentSlope(share)
+		if math.Abs(slope) <= -enough*start {
+			return share
+		}
+		if slope < 0 {
+			low, lowSlope = share, slope
+		} else {
+			high, highSlope = share, slope
+		}
+	}
+	return share
+}
+
+// contentSlope returns the derivative of the content along the step, at a share of it.
+func (s *Solver) contentSlope(share float64) float64 {
+	points := s.network.Points
+	sum := 0.0
+	for k := range s.links {
+		change := s.next[k] - s.flow[k]
+		if s.weight[k] == 0 || change == 0 {
+			continue
+		}
+		l := &s.links[k]
+		loss, _ := l.lossAt(s.flow[k] + share*change)
+		if points[l.from].Fixed {
+			loss -= points[l.from].Head
+		}
+		if points[l.to].Fixed {
+			loss += points[l.to].Head
+		}
+		sum += change * loss
+	}
+	return sum
+}
+
+// mostHeldBack returns the open one-way link that holds back the most head, or -1.
+func (s *Solver) mostHeldBack() int {
+	most, worst := heldBack, -1
+	for k, l := range s.links {
+		if !s.shut[k] && l.oneWay > 0 && -l.oneWay*s.flow[k] > most {
+			most, worst = -l.oneWay*s.flow[k], k
+		}
+	}
+	return worst
+}
+
+func (s *Solver) name(k int) string {
+	switch runs := len(s.network.Runs); {
+	case k < 0:
+		return "no run"
+	case k < runs:
+		return s.network.Runs[k].Name
+	default:
+		return s.network.Pumps[k-runs].Name
+	}
+}
+
+// report writes the solution into out and judges its residuals.
+func (s *Solver) report(out *Solution, forced int, forcedFlow float64) {
+	runs := len(s.network.Runs)
+	out.Heads = append(out.Heads[:0], s.head...)
+	out.RunFlows = append(out.RunFlows[:0], s.flow[:runs]...)
+	out.PumpFlows = append(out.PumpFlows[:0], s.flow[runs:]...)
+	if forced >= 0 {
+		out.PumpFlows[forced] = forcedFlow
+	}
+	out.HeadResidual, out.MassResidual, out.Worst = 0, 0, ""
+	greatestFlow := 0.0
+	imbalance := s.right.Data // by row
+	for row, point := range s.order {
+		imbalance[row] = s.draw[point]
+		greatestFlow = math.Max(greatestFlow, math.Abs(s.draw[point]))
+	}
+	for k := range s.links {
+		l := &s.links[k]
+		greatestFlow = math.Max(greatestFlow, math.Abs(s.flow[k]))
+		if !s.network.Points[l.from].Fixed {
+			imbalance[s.row[l.from]] += s.flow[k]
+		}
+		if !s.network.Points[l.to].Fixed {
+			imbalance[s.row[l.to]] -= s.flow[k]
+		}
+		if s.shut[k] {
+			continue
+		}
+		loss, _ := l.lossAt(s.flow[k])
+		if gap := math.Abs(loss - (s.head[l.from] - s.head[l.to])); gap > out.HeadResidual {
+			out.HeadResidual, out.Worst = gap, s.name(k)
+		}
+	}
+	for _, r := range imbalance {
+		if greatestFlow > 0 {
+			out.MassResidual = math.Max(out.MassResidual, math.Abs(r)/greatestFlow)
+		}
+	}
+}

@@ -25,11 +25,12 @@ type Solver struct {
 	network *Network
 	links   []link // runs, then pumps
 
-	row    []int // row of the matrix of each point, -1 for a fixed one or one cut off
-	order  []int // points in the order of their rows
-	band   blas64.SymmetricBand
-	right  blas64.General
-	groups partition
+	row      []int // row of the matrix of each point, -1 for a fixed one or one cut off
+	order    []int // points in the order of their rows
+	band     blas64.SymmetricBand
+	triangle blas64.TriangularBand // its factor, in the same memory
+	right    blas64.General
+	groups   partition
 
 	flow, next, loss, weight []float64 // by link; weight is 1 over the slope of the loss
 	shut                     []bool    // by link: passes nothing in this solution
@@ -76,6 +77,9 @@ func NewSolver(n *Network) (*Solver, error) {
 	s.shut = make([]bool, links)
 	s.head, s.draw = make([]float64, points), make([]float64, points)
 	s.held, s.row = make([]bool, points), make([]int, points)
+	for i := range s.row {
+		s.row[i] = -1
+	}
 	s.groups = newPartition(points)
 	s.number()
 	for i, l := range s.links {
@@ -171,8 +175,10 @@ func (e *NotConverged) Error() string {
 const (
 	greatestRounds = 200
 	stepTolerance  = 1e-10 // of the greatest flow
+	headTolerance  = 1e-8  // m: the change of a link's loss in the last step; what is left over goes with its square
 	roundingUnits  = 16    // of the last place of the heads, turned into flow: below that a step is noise
 	heldBack       = 1e-9  // m: what a non-return must hold to count as shut
+	noFlow         = 1e-15 // m3/s: a flow below this is none
 )
 
 // Solve finds the flows and heads. The solution is written into out, whose slices are used again where they are
@@ -277,28 +283,34 @@ func (s *Solver) isolate() error {
 	return cut
 }
 
-// iterate takes Newton steps until they are lost in rounding or below stepTolerance.
+// iterate takes Newton steps until the last one is within its tolerance, or lost in rounding: near it and no longer
+// shrinking.
 func (s *Solver) iterate(rounds *int) error {
 	for k := range s.links {
 		if s.shut[k] {
 			s.flow[k] = 0
 		}
 	}
-	var step float64
-	var worst int
+	const near, patience = 100, 3 // times the tolerance; rounds
+	excess, worst, stalled := math.Inf(1), -1, 0
 	for first := true; *rounds < greatestRounds; first = false {
 		*rounds++
 		s.linearise()
 		if err := s.step(); err != nil {
 			return err
 		}
-		step, worst = s.stepSize()
-		settled := worst < 0
-		if settled {
-			s.balance()
+		s.balance()
+		last := excess
+		excess, worst = s.stepSize()
+		if excess < near && excess > last/2 {
+			stalled++
 		}
+		settled := excess <= 1 || stalled >= patience
 		share := 1.0
-		if !first && !settled { // before the first step the flows satisfy no continuity, and the content says nothing
+		if settled {
+			s.balance() // once more: the weights of a network span many decades
+			s.balance()
+		} else if !first { // before the first step the flows satisfy no continuity, and the content says nothing
 			share = s.shorten()
 		}
 		for k := range s.flow {
@@ -312,7 +324,11 @@ func (s *Solver) iterate(rounds *int) error {
 			return nil
 		}
 	}
-	return &NotConverged{Rounds: *rounds, Step: step, Where: s.name(worst)}
+	s.linearise()
+	if err := s.step(); err != nil {
+		return err
+	}
+	return &NotConverged{Rounds: *rounds, Step: math.Abs(s.next[worst] - s.flow[worst]), Where: s.name(worst)}
 }
 
 // linearise finds the loss and the weight of every open link at its present flow.
@@ -324,6 +340,20 @@ func (s *Solver) linearise() {
 		}
 		loss, slope := s.links[k].lossAt(s.flow[k])
 		s.loss[k], s.weight[k] = loss, 1/slope
+	}
+}
+
+// raiseWeights lifts the weights that are lost in the rounding of the greatest. Only odd starts come there, and a
+// greater weight changes the way to the answer, not the answer.
+func (s *Solver) raiseWeights() {
+	greatest := 0.0
+	for _, w := range s.weight {
+		greatest = math.Max(greatest, w)
+	}
+	for k, w := range s.weight {
+		if w > 0 {
+			s.weight[k] = math.Max(w, 1e-13*greatest)
+		}
 	}
 }
 
@@ -353,35 +383,18 @@ func (l *link) lossAt(flow float64) (loss, slope float64) {
 
 // step solves for the heads of the linearised network and puts the flows that go with them into next.
 func (s *Solver) step() error {
+	if !s.factor() {
+		s.raiseWeights()
+		if !s.factor() {
+			return fmt.Errorf("hydraulics: the matrix of the network is singular")
+		}
+	}
 	if len(s.order) > 0 {
-		data, right, stride := s.band.Data, s.right.Data, s.band.Stride
-		clear(data)
-		for row, point := range s.order {
-			right[row] = -s.draw[point]
-			if math.IsNaN(s.head[point]) {
-				data[row*stride] = 1 // cut off: kept in the matrix as a row of its own
-				right[row] = 0
-			}
-		}
-		for k := range s.links {
-			w := s.weight[k]
-			if w == 0 {
-				continue
-			}
-			from, to := s.links[k].from, s.links[k].to
-			constant := s.flow[k] - w*s.loss[k] // next = constant + w (Hfrom - Hto)
-			s.addToBand(from, to, -constant, w)
-			s.addToBand(to, from, constant, w)
-		}
-		triangle, ok := lapack64.Pbtrf(s.band)
-		if !ok {
-			return fmt.Errorf("hydraulics: the matrix of the network is not positive definite")
-		}
-		lapack64.Pbtrs(triangle, s.right)
-		for row, point := range s.order {
-			if !math.IsNaN(s.head[point]) {
-				s.head[point] = right[row]
-			}
+		lapack64.Pbtrs(s.triangle, s.right)
+	}
+	for row, point := range s.order {
+		if !math.IsNaN(s.head[point]) {
+			s.head[point] = s.right.Data[row]
 		}
 	}
 	for k := range s.links {
@@ -393,6 +406,33 @@ func (s *Solver) step() error {
 		}
 	}
 	return nil
+}
+
+// factor sets up the equations of the heads and factors their matrix; false where rounding has made it singular.
+func (s *Solver) factor() bool {
+	if len(s.order) == 0 {
+		return true
+	}
+	data, right, stride := s.band.Data, s.right.Data, s.band.Stride
+	clear(data)
+	for row, point := range s.order {
+		right[row] = -s.draw[point]
+		if math.IsNaN(s.head[point]) {
+			data[row*stride] = 1 // cut off: kept in the matrix as a row of its own
+			right[row] = 0
+		}
+	}
+	for k := range s.links {
+		if w := s.weight[k]; w > 0 {
+			from, to := s.links[k].from, s.links[k].to
+			constant := s.flow[k] - w*s.loss[k] // next = constant + w (Hfrom - Hto)
+			s.addToBand(from, to, -constant, w)
+			s.addToBand(to, from, constant, w)
+		}
+	}
+	var ok bool
+	s.triangle, ok = lapack64.Pbtrf(s.band)
+	return ok
 }
 
 // addToBand adds one end of a link of weight w to the equation of its point.
@@ -413,8 +453,8 @@ func (s *Solver) addToBand(point, other int, inflow, w float64) {
 	}
 }
 
-// stepSize returns the change of the flow that moves most beyond its tolerance, and its link; -1 where none does.
-func (s *Solver) stepSize() (step float64, worst int) {
+// stepSize returns the greatest change of a flow in this step over its tolerance, and the link where it is.
+func (s *Solver) stepSize() (excess float64, worst int) {
 	greatestFlow, greatestHead := 0.0, 0.0
 	for _, q := range s.next {
 		greatestFlow = math.Max(greatestFlow, math.Abs(q))
@@ -425,18 +465,19 @@ func (s *Solver) stepSize() (step float64, worst int) {
 		}
 	}
 	const epsilon = 0x1p-52
-	worst = -1
 	for k := range s.links {
 		change := math.Abs(s.next[k] - s.flow[k])
 		floor := roundingUnits * epsilon * greatestHead * s.weight[k]
-		if !(change <= stepTolerance*greatestFlow+floor+1e-13) && !(change <= step) {
-			step, worst = change, k
+		tolerance := math.Min(stepTolerance*greatestFlow, headTolerance*s.weight[k])
+		if e := change / (tolerance + floor + noFlow); !(e <= excess) {
+			excess, worst = e, k
 		}
 	}
-	return step, worst
+	return excess, worst
 }
 
-// balance takes out of next what rounding has put into the points' balance of flow, with the matrix factored last.
+// balance corrects heads and next flows for what rounding has put into the points' balance of flow: one round of
+// iterative refinement with the matrix factored last.
 func (s *Solver) balance() {
 	if len(s.order) == 0 {
 		return
@@ -448,22 +489,27 @@ func (s *Solver) balance() {
 			right[row] = 0
 		}
 	}
-	for k, l := range s.links {
-		if !s.network.Points[l.from].Fixed {
-			right[s.row[l.from]] -= s.next[k]
+	for k := range s.links {
+		l := &s.links[k]
+		if row := s.row[l.from]; row >= 0 {
+			right[row] -= s.next[k]
 		}
-		if !s.network.Points[l.to].Fixed {
-			right[s.row[l.to]] += s.next[k]
+		if row := s.row[l.to]; row >= 0 {
+			right[row] += s.next[k]
 		}
 	}
-	lapack64.Pbtrs(blas64.TriangularBand{Uplo: s.band.Uplo, Diag: blas.NonUnit, N: s.band.N, K: s.band.K, Stride: s.band.Stride, Data: s.band.Data}, s.right)
+	lapack64.Pbtrs(s.triangle, s.right)
 	correction := func(point int) float64 {
-		if s.network.Points[point].Fixed {
-			return 0
+		if row := s.row[point]; row >= 0 {
+			return right[row]
 		}
-		return right[s.row[point]]
+		return 0
 	}
-	for k, l := range s.links {
+	for row, point := range s.order {
+		s.head[point] += right[row]
+	}
+	for k := range s.links {
+		l := &s.links[k]
 		s.next[k] += s.weight[k] * (correction(l.from) - correction(l.to))
 	}
 }
@@ -520,12 +566,22 @@ func (s *Solver) contentSlope(share float64) float64 {
 	return sum
 }
 
-// mostHeldBack returns the open one-way link that holds back the most head, or -1.
+// mostHeldBack returns the open one-way link that holds back the most head, or -1. Of two in a line, which share what
+// they hold, it is the one whose name sorts first: an answer must not depend on the order of rows. The point between
+// them then stands at the other's head, though it might stand anywhere between.
 func (s *Solver) mostHeldBack() int {
-	most, worst := heldBack, -1
+	greatestFlow := 0.0
+	for _, q := range s.flow {
+		greatestFlow = math.Max(greatestFlow, math.Abs(q))
+	}
+	most, worst := 0.0, -1
 	for k, l := range s.links {
-		if !s.shut[k] && l.oneWay > 0 && -l.oneWay*s.flow[k] > most {
-			most, worst = -l.oneWay*s.flow[k], k
+		holds := -l.oneWay * s.flow[k]
+		if s.shut[k] || holds <= heldBack || -s.flow[k] <= 1e-14*greatestFlow {
+			continue
+		}
+		if holds > most*(1+1e-3) || holds > most*(1-1e-3) && s.name(k) < s.name(worst) {
+			most, worst = holds, k
 		}
 	}
 	return worst
@@ -544,6 +600,11 @@ func (s *Solver) name(k int) string {
 
 // report writes the solution into out and judges its residuals.
 func (s *Solver) report(out *Solution, forced int, forcedFlow float64) {
+	for k := range s.flow {
+		if math.Abs(s.flow[k]) < noFlow || s.flow[k] < 0 && s.links[k].oneWay > 0 {
+			s.flow[k] = 0 // what a one-way link still passes backwards is rounding: see mostHeldBack
+		}
+	}
 	runs := len(s.network.Runs)
 	out.Heads = append(out.Heads[:0], s.head...)
 	out.RunFlows = append(out.RunFlows[:0], s.flow[:runs]...)
@@ -571,8 +632,12 @@ func (s *Solver) report(out *Solution, forced int, forcedFlow float64) {
 			continue
 		}
 		loss, _ := l.lossAt(s.flow[k])
-		if gap := math.Abs(loss - (s.head[l.from] - s.head[l.to])); gap > out.HeadResidual {
-			out.HeadResidual, out.Worst = gap, s.name(k)
+		gap := s.head[l.from] - s.head[l.to] - loss
+		if l.oneWay > 0 && s.flow[k] == 0 {
+			gap = math.Max(gap, 0) // at rest it holds back what it must
+		}
+		if math.Abs(gap) > out.HeadResidual {
+			out.HeadResidual, out.Worst = math.Abs(gap), s.name(k)
 		}
 	}
 	for _, r := range imbalance {

@@ -13,6 +13,7 @@ import (
 type Plant struct {
 	Network    hydraulics.Network // its PumpLinks are made from Pumps
 	Elevations []float64          // of the points, m above the keel
+	SeaInlets  []bool             // by point: an inlet from the sea
 	Pumps      []Pump
 	Water      fluids.State
 	Atmosphere float64 // Pa, absolute
@@ -21,8 +22,9 @@ type Plant struct {
 // Pump is a pump in its place.
 type Pump struct {
 	Name     string
-	From, To int // points of the network
-	Datum    float64
+	From, To int     // points of the network
+	Datum    float64 // m above the keel, of the impeller eye
+	Motor    float64 // W, rating of its motor; NaN where not known
 	Running  bool
 	pumps.Pump
 }
@@ -37,12 +39,7 @@ type Solved struct {
 // Solve finds the operating point of every pump and the flow in every run at once. The error is that of the
 // network's solution: unsound data, a *hydraulics.CutOff or a *hydraulics.NotConverged.
 func (p *Plant) Solve() (*Solved, error) {
-	p.Network.Viscosity = p.Water.KinematicViscosity()
-	p.Network.Pumps = p.Network.Pumps[:0]
-	for i := range p.Pumps {
-		u := &p.Pumps[i]
-		p.Network.Pumps = append(p.Network.Pumps, hydraulics.PumpLink{Name: u.Name, From: u.From, To: u.To, Drive: u.Pump, Running: u.Running})
-	}
+	p.link()
 	solver, err := hydraulics.NewSolver(&p.Network)
 	if err != nil {
 		return nil, err
@@ -52,6 +49,22 @@ func (p *Plant) Solve() (*Solved, error) {
 		return nil, err
 	}
 	return s, nil
+}
+
+// Check returns the first thing that makes the plant unsound; see hydraulics.Network.Check.
+func (p *Plant) Check() error {
+	p.link()
+	return p.Network.Check()
+}
+
+// link puts the water and the pumps into the network.
+func (p *Plant) link() {
+	p.Network.Viscosity = p.Water.KinematicViscosity()
+	p.Network.Pumps = p.Network.Pumps[:0]
+	for i := range p.Pumps {
+		u := &p.Pumps[i]
+		p.Network.Pumps = append(p.Network.Pumps, hydraulics.PumpLink{Name: u.Name, From: u.From, To: u.To, Drive: u.Pump, Running: u.Running})
+	}
 }
 
 // weight returns the weight of a cubic metre of the water, N/m3.

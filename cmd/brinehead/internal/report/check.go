@@ -1,0 +1,258 @@
+package report
+
+import (
+	"encoding/csv"
+	"encoding/json"
+	"fmt"
+	"io"
+	"strings"
+
+	"brinehead/cmd/brinehead/internal/study"
+)
+
+// textWidth is the width of a terminal that text is made for.
+const textWidth = 80
+
+// WriteCheckJSON writes the answer with the keys of the contract.
+func WriteCheckJSON(w io.Writer, a *study.Check) error {
+	e := json.NewEncoder(w)
+	e.SetIndent("", "  ")
+	e.SetEscapeHTML(false)
+	return e.Encode(a)
+}
+
+// WriteCheckText writes the answer for reading: the verdict first, then what is not met and what could not be judged,
+// then every condition's operating points. Where the answer is of one condition its runs follow.
+func WriteCheckText(w io.Writer, a *study.Check, u Units) error {
+	var lines []string
+	lines = append(lines, summary(a)...)
+	for _, v := range []study.Verdict{study.NotMet, study.NotJudged} {
+		lines = append(lines, findings(a, v, u)...)
+	}
+	for i := range a.Conditions {
+		lines = append(lines, "")
+		lines = append(lines, conditionLines(&a.Conditions[i], u, len(a.Conditions) == 1)...)
+	}
+	if len(a.Notes) > 0 {
+		lines = append(lines, "")
+		for _, n := range a.Notes {
+			lines = append(lines, wrap("Note: "+n, textWidth, "  ")...)
+		}
+	}
+	lines = append(lines, "")
+	lines = append(lines, wrap(Caution, textWidth, "")...)
+	_, err := io.WriteString(w, strings.Join(lines, "\n")+"\n")
+	return err
+}
+
+// Caution stands under every result.
+const Caution = "Results support, and never replace, the judgement of a licensed engineer, the maker's data and the rules of " +
+	"class and flag. A strainer's blockage is modelled by its free area; matted leaf, sheet or weed does worse."
+
+// summary says in one or two lines how the job stands.
+func summary(a *study.Check) []string {
+	count := map[study.Verdict]int{}
+	for _, c := range a.Conditions {
+		for _, f := range c.Findings {
+			count[f.Verdict]++
+		}
+	}
+	total := count[study.Met] + count[study.NotMet] + count[study.NotJudged]
+	verdict := "EVERY LIMIT MET"
+	switch {
+	case count[study.NotMet] > 0:
+		verdict = fmt.Sprintf("NOT MET: %d of %d limits", count[study.NotMet], total)
+		if n := count[study.NotJudged]; n > 0 {
+			verdict += fmt.Sprintf("; %d more NOT JUDGED", n)
+		}
+	case count[study.NotJudged] > 0:
+		verdict = fmt.Sprintf("NOT JUDGED: %d of %d limits", count[study.NotJudged], total)
+	}
+	return []string{verdict, fmt.Sprintf("%s: %s, %d limits judged, %d met", a.Job, counted(len(a.Conditions), "condition"), total-count[study.NotJudged], count[study.Met])}
+}
+
+func counted(n int, what string) string {
+	if n == 1 {
+		return "1 " + what
+	}
+	return fmt.Sprintf("%d %ss", n, what)
+}
+
+// findings lists those of one verdict, condition by condition.
+func findings(a *study.Check, v study.Verdict, u Units) []string {
+	var lines []string
+	for _, c := range a.Conditions {
+		for _, f := range c.Findings {
+			if f.Verdict != v {
+				continue
+			}
+			if lines == nil {
+				lines = []string{"", strings.ToUpper(string(v))}
+			}
+			text := fmt.Sprintf("%s: %s of %s: %s", c.Condition, f.Limit, f.On, reason(f, u))
+			lines = append(lines, wrap("  "+text+" ["+f.Source+"]", textWidth, "    ")...)
+		}
+	}
+	return lines
+}
+
+// reason words a finding in the units asked for.
+func reason(f study.Finding, u Units) string {
+	if f.Verdict == study.NotJudged {
+		return f.Reason
+	}
+	return f.Worded(float64(u.Turn(f.Value, f.Unit)), float64(u.Turn(f.LimitValue, f.Unit)), u.Unit(f.Unit))
+}
+
+// conditionLines writes one condition.
+func conditionLines(c *study.Condition, u Units, withRuns bool) []string {
+	lines := wrap(c.Condition+": "+waterText(c, u), textWidth, "  ")
+	pumps := grid{left: 1, head: []string{"pump", "flow " + u.Unit("m3/h"), "head " + u.Unit("m"), "eff. %", "shaft " + u.Unit("kW"),
+		"NPSHA", "NPSHR", "margin", "of best %"}}
+	for _, p := range c.Pumps {
+		row := []string{p.Pump, u.Text(p.Flow, "m3/h", 1), u.Text(p.Head, "m", 2), u.Text(100*p.Efficiency, "", 1), u.Text(p.ShaftPower, "kW", 1),
+			u.Text(p.NPSHAvailable, "m", 2), u.Text(p.NPSHRequired, "m", 2), u.Text(p.NPSHMargin, "m", 2), u.Text(100*p.BestShare, "", 0)}
+		if !p.Running {
+			row = []string{p.Pump, "idle", "", "", "", "", "", "", ""}
+		} else if p.Extrapolated {
+			row[1] = "off curve"
+		}
+		pumps.rows = append(pumps.rows, row)
+	}
+	if len(pumps.rows) > 0 {
+		lines = append(lines, pumps.lines("  ")...)
+	}
+	if withRuns && len(c.Runs) > 0 {
+		lines = append(lines, "")
+		lines = append(lines, runGrid(c, u).lines("  ")...)
+		lines = append(lines, "")
+		lines = append(lines, pointGrid(c, u).lines("  ")...)
+	}
+	for _, n := range c.Notes {
+		lines = append(lines, wrap("  Note: "+n, textWidth, "    ")...)
+	}
+	return lines
+}
+
+func waterText(c *study.Condition, u Units) string {
+	text := fmt.Sprintf("%s water %s %s", c.Water.Kind, u.Text(c.Water.Temperature, "degC", 1), u.Unit("degC"))
+	if c.Water.Salinity != 0 {
+		text += fmt.Sprintf(", %.4g g/kg", float64(c.Water.Salinity))
+	}
+	text += fmt.Sprintf(", %.1f kg/m3", float64(c.Water.Density))
+	if c.Draught.Known() {
+		text += fmt.Sprintf(", draught %s %s", u.Text(c.Draught, "m", 2), u.Unit("m"))
+	}
+	return text
+}
+
+func runGrid(c *study.Condition, u Units) grid {
+	g := grid{left: 1, head: []string{"run", "flow " + u.Unit("m3/h"), u.Unit("m/s"), "Re", "f", "pipe loss " + u.Unit("m"), "fittings " + u.Unit("m")}}
+	for _, r := range c.Runs {
+		row := []string{r.Run, u.Text(r.Flow, "m3/h", 1), u.Text(r.Velocity, "m/s", 2), u.Text(r.Reynolds, "", 0), u.Text(r.FrictionFactor, "", 4),
+			u.Text(r.PipeLoss, "m", 3), u.Text(r.FittingLoss, "m", 3)}
+		if r.Shut {
+			row = []string{r.Run, "shut", "", "", "", "", ""}
+		}
+		g.rows = append(g.rows, row)
+	}
+	return g
+}
+
+func pointGrid(c *study.Condition, u Units) grid {
+	g := grid{left: 1, head: []string{"point", "total head " + u.Unit("m"), "gauge " + u.Unit("bar")}}
+	for _, p := range c.Points {
+		g.rows = append(g.rows, []string{p.Point, u.Text(p.Head, "m", 3), u.Text(p.GaugePressure, "bar", 3)})
+	}
+	return g
+}
+
+// csvTable is a CSV file in the making: what is not known is an empty cell.
+type csvTable struct {
+	units Units
+	rows  [][]string
+}
+
+func (t *csvTable) add(cells ...string) { t.rows = append(t.rows, cells) }
+
+// figure writes a value with six significant digits.
+func (t *csvTable) figure(v study.Figure, metric string) string {
+	v = t.units.Turn(v, metric)
+	if !v.Known() {
+		return ""
+	}
+	return fmt.Sprintf("%.6g", float64(v))
+}
+
+// word makes a cell of the user's text harmless for a spreadsheet, which would take one that begins with an operator
+// for a formula.
+func word(text string) string {
+	if text != "" && strings.ContainsRune("=+-@\t\r", rune(text[0])) {
+		return "'" + text
+	}
+	return text
+}
+
+func (t *csvTable) write(w io.Writer) error {
+	c := csv.NewWriter(w)
+	if err := c.WriteAll(t.rows); err != nil {
+		return err
+	}
+	return c.Error()
+}
+
+func (t *csvTable) unit(name, metric string) string { return name + " [" + t.units.Unit(metric) + "]" }
+
+// WriteDutyCSV writes the operating points: a row for each pump of each condition.
+func WriteDutyCSV(w io.Writer, a *study.Check, u Units) error {
+	t := &csvTable{units: u}
+	t.add("condition", "pump", "running", t.unit("flow", "m3/h"), t.unit("head", "m"), "efficiency [%]", t.unit("shaft power", "kW"),
+		t.unit("NPSH available", "m"), t.unit("NPSH required", "m"), t.unit("NPSH margin", "m"), "share of best-efficiency flow [%]", "extrapolated")
+	for _, c := range a.Conditions {
+		for _, p := range c.Pumps {
+			t.add(word(c.Condition), word(p.Pump), yesNo(p.Running), t.figure(p.Flow, "m3/h"), t.figure(p.Head, "m"), t.figure(100*p.Efficiency, ""),
+				t.figure(p.ShaftPower, "kW"), t.figure(p.NPSHAvailable, "m"), t.figure(p.NPSHRequired, "m"), t.figure(p.NPSHMargin, "m"),
+				t.figure(100*p.BestShare, ""), yesNo(p.Extrapolated))
+		}
+	}
+	return t.write(w)
+}
+
+// WriteLossesCSV writes where the head goes: a row for each run and for each of its fittings, condition by condition.
+func WriteLossesCSV(w io.Writer, a *study.Check, u Units) error {
+	t := &csvTable{units: u}
+	t.add("condition", "run", "tag", "element", t.unit("flow", "m3/h"), t.unit("velocity", "m/s"), "Reynolds number [-]", "friction factor [-]",
+		t.unit("loss", "m"), "regime")
+	for _, c := range a.Conditions {
+		for _, r := range c.Runs {
+			t.add(word(c.Condition), word(r.Run), "", "pipe", t.figure(r.Flow, "m3/h"), t.figure(r.Velocity, "m/s"), t.figure(r.Reynolds, ""),
+				t.figure(r.FrictionFactor, ""), t.figure(r.PipeLoss, "m"), r.Regime)
+			for _, f := range c.Fittings {
+				if f.Run == r.Run {
+					t.add(word(c.Condition), word(r.Run), word(f.Tag), word(f.Fitting), t.figure(r.Flow, "m3/h"), "", "", "", t.figure(f.Loss, "m"), "")
+				}
+			}
+		}
+	}
+	return t.write(w)
+}
+
+// WriteFindingsCSV writes every limit judged.
+func WriteFindingsCSV(w io.Writer, a *study.Check, u Units) error {
+	t := &csvTable{units: u}
+	t.add("condition", "limit", "on", "value", "limit value", "unit", "verdict", "reason", "source")
+	for _, c := range a.Conditions {
+		for _, f := range c.Findings {
+			t.add(word(c.Condition), f.Limit, word(f.On), t.figure(f.Value, f.Unit), t.figure(f.LimitValue, f.Unit), u.Unit(f.Unit), string(f.Verdict),
+				word(reason(f, u)), word(f.Source))
+		}
+	}
+	return t.write(w)
+}
+
+func yesNo(b bool) string {
+	if b {
+		return "yes"
+	}
+	return "no"
+}

@@ -1,0 +1,318 @@
+package study
+
+import (
+	"errors"
+	"fmt"
+	"math"
+	"strings"
+
+	"brinehead/cmd/brinehead/internal/job"
+	"brinehead/curves"
+	"brinehead/hydraulics"
+)
+
+// Check is the answer to `check`: every condition of a job with its operating points and its limits judged. Its JSON
+// keys are a contract; see the README.
+type Check struct {
+	Job        string      `json:"job"`
+	Version    string      `json:"version"`
+	Conditions []Condition `json:"conditions"`
+	Notes      []string    `json:"notes"`
+
+	Failed []error `json:"-"` // *NoSolution of each condition that could not be solved
+}
+
+// Condition is one condition solved.
+type Condition struct {
+	Condition string    `json:"condition"`
+	Water     Water     `json:"water"`
+	Draught   Figure    `json:"draught_m"`
+	Pumps     []Pump    `json:"pumps"`
+	Runs      []Run     `json:"runs"`
+	Fittings  []Fitting `json:"fittings"`
+	Points    []Point   `json:"points"`
+	Findings  []Finding `json:"findings"`
+	Notes     []string  `json:"notes"`
+	Solution  Solution  `json:"solution"`
+
+	solved     *curves.Solved // nil where there is no solution
+	elevations []float64      // of the points, m
+}
+
+// Water is the water of a condition.
+type Water struct {
+	Kind             string `json:"kind"`
+	Temperature      Figure `json:"temperature_degC"`
+	Salinity         Figure `json:"salinity_g_kg"`
+	Density          Figure `json:"density_kg_m3"`
+	DynamicViscosity Figure `json:"dynamic_viscosity_Pa_s"`
+	VapourPressure   Figure `json:"vapour_pressure_Pa"`
+	HeatCapacity     Figure `json:"heat_capacity_J_kg_K"`
+}
+
+// Pump is a pump's operating point. Where it is extrapolated every figure that rests on the curve is unknown.
+type Pump struct {
+	Pump          string `json:"pump"`
+	Running       bool   `json:"running"`
+	Flow          Figure `json:"flow_m3h"`
+	Head          Figure `json:"head_m"`
+	Efficiency    Figure `json:"efficiency"`
+	ShaftPower    Figure `json:"shaft_power_kW"`
+	NPSHAvailable Figure `json:"npsh_available_m"`
+	NPSHRequired  Figure `json:"npsh_required_m"`
+	NPSHMargin    Figure `json:"npsh_margin_m"`
+	BestShare     Figure `json:"best_efficiency_share"`
+	Extrapolated  bool   `json:"extrapolated"`
+	HeldShut      bool   `json:"held_shut"`
+}
+
+// Run is the flow in a run, positive from its start to its end.
+type Run struct {
+	Run            string `json:"run"`
+	Flow           Figure `json:"flow_m3h"`
+	Velocity       Figure `json:"velocity_m_s"`
+	Reynolds       Figure `json:"reynolds"`
+	FrictionFactor Figure `json:"friction_factor"`
+	PipeLoss       Figure `json:"pipe_loss_m"`
+	FittingLoss    Figure `json:"fitting_loss_m"`
+	Regime         string `json:"regime"`
+	Shut           bool   `json:"shut"`
+}
+
+// Fitting is the loss of one row of fittings.csv.
+type Fitting struct {
+	Run     string `json:"run"`
+	Tag     string `json:"tag"`
+	Fitting string `json:"fitting"`
+	Loss    Figure `json:"loss_m"`
+	Drop    Figure `json:"drop_bar"`
+	Outlet  Figure `json:"outlet_temperature_degC"` // where the row gives a heat: by heat balance alone
+}
+
+// Point is the state of a point.
+type Point struct {
+	Point         string `json:"point"`
+	Head          Figure `json:"head_m"`
+	GaugePressure Figure `json:"gauge_pressure_bar"`
+}
+
+// Solution says how well the condition is solved.
+type Solution struct {
+	Converged    bool   `json:"converged"`
+	Rounds       int    `json:"rounds"`
+	MassResidual Figure `json:"mass_residual"`
+	HeadResidual Figure `json:"head_residual_m"`
+	Worst        string `json:"worst"`
+}
+
+// NoSolution is a condition without an answer.
+type NoSolution struct {
+	Condition string
+	Err       error
+}
+
+// Error names the condition.
+func (e *NoSolution) Error() string { return fmt.Sprintf("condition %s: %v", e.Condition, e.Err) }
+
+// Unwrap returns why.
+func (e *NoSolution) Unwrap() error { return e.Err }
+
+// Checked solves the conditions of a job (all of them where only is empty) and judges its limits. Conditions that
+// cannot be solved are in the answer, all their limits not judged, and in Failed. The error is job.Faults.
+func Checked(j *job.Job, only []string, version string) (*Check, error) {
+	if len(only) == 0 {
+		only = j.Conditions()
+	}
+	limits := newLimits(j)
+	answer := &Check{Job: j.Name, Version: version, Notes: limits.notes()}
+	for _, name := range only {
+		plant, err := j.Plant(name)
+		if err != nil {
+			return nil, err
+		}
+		row := j.Condition(name)
+		c := Condition{Condition: row.Condition.Value, Water: waterOf(plant), Draught: Figure(row.Draught.Or(math.NaN()))}
+		c.solved, err = plant.Solve()
+		if err != nil {
+			answer.Failed = append(answer.Failed, &NoSolution{c.Condition, err})
+			c.Notes = append(c.Notes, "no solution: "+err.Error())
+			c.Solution = Solution{MassResidual: unknown, HeadResidual: unknown}
+		} else {
+			c.report(j)
+		}
+		c.Findings = limits.judge(&c, plant, row, err)
+		answer.Conditions = append(answer.Conditions, c)
+	}
+	return answer, nil
+}
+
+func waterOf(p *curves.Plant) Water {
+	w := p.Water
+	return Water{Kind: w.Kind.String(), Temperature: Figure(w.Celsius), Salinity: Figure(w.Salinity), Density: Figure(w.Density),
+		DynamicViscosity: Figure(w.DynamicViscosity), VapourPressure: Figure(w.VapourPressure), HeatCapacity: Figure(w.HeatCapacity)}
+}
+
+// report fills in what the solution says. Where a running pump is beyond its curve, all flows rest on a guess at its
+// head, and none is given as a figure.
+func (c *Condition) report(j *job.Job) {
+	s := c.solved
+	sound := true
+	for i, u := range s.Plant.Pumps {
+		d := s.Duty(i)
+		p := Pump{Pump: u.Name, Running: d.Running, Flow: Figure(d.Flow * 3600), Head: Figure(d.Head), Efficiency: Figure(d.Efficiency),
+			ShaftPower: Figure(d.ShaftPower / 1e3), NPSHAvailable: Figure(d.NPSHAvailable), NPSHRequired: Figure(d.NPSHRequired),
+			NPSHMargin: Figure(d.NPSHMargin), BestShare: Figure(d.BestShare), Extrapolated: d.Extrapolated && d.Running, HeldShut: d.HeldShut}
+		if p.Extrapolated {
+			sound = false
+			c.Notes = append(c.Notes, beyondCurve(s, i))
+		}
+		if p.HeldShut {
+			c.Notes = append(c.Notes, u.Name+" runs against its shut non-return valve and delivers nothing: it heats up")
+		}
+		c.Pumps = append(c.Pumps, p)
+	}
+	for i, r := range s.Network.Runs {
+		c.Runs = append(c.Runs, runOf(r, s.RunFlows[i], s.Network.Viscosity))
+		c.Fittings = append(c.Fittings, fittingsOf(s, i)...)
+	}
+	for i, p := range s.Network.Points {
+		c.Points = append(c.Points, Point{p.Name, Figure(s.Heads[i]), Figure(s.GaugePressure(i) / 1e5)})
+		if math.IsNaN(s.Heads[i]) {
+			c.Notes = append(c.Notes, p.Name+" is cut off by shut runs: its pressure is not known")
+		}
+	}
+	for _, r := range c.Runs {
+		if r.Regime == hydraulics.Transitional.String() {
+			c.Notes = append(c.Notes, fmt.Sprintf("flow in %s is transitional (Re %.0f): its friction is a bridge between two laws", r.Run, float64(r.Reynolds)))
+		}
+		if float64(r.Reynolds) > hydraulics.GreatestReynolds {
+			sound = false
+			c.Notes = append(c.Notes, fmt.Sprintf("flow in %s is beyond the range of the friction law (Re %.3g)", r.Run, float64(r.Reynolds)))
+		}
+	}
+	c.Solution = Solution{true, s.Rounds, Figure(s.MassResidual), Figure(s.HeadResidual), s.Worst}
+	outlets(j, c)
+	if !sound {
+		c.withhold()
+	}
+}
+
+// withhold takes back every figure that rests on an extrapolated one. A fixed head stays: it is given, not found.
+func (c *Condition) withhold() {
+	for i, p := range c.Pumps {
+		if p.Running {
+			c.Pumps[i] = Pump{Pump: p.Pump, Running: true, Extrapolated: p.Extrapolated, HeldShut: p.HeldShut, Flow: unknown, Head: unknown, Efficiency: unknown,
+				ShaftPower: unknown, NPSHAvailable: unknown, NPSHRequired: unknown, NPSHMargin: unknown, BestShare: unknown}
+		}
+	}
+	for i, r := range c.Runs {
+		if !r.Shut {
+			c.Runs[i] = Run{Run: r.Run, Flow: unknown, Velocity: unknown, Reynolds: unknown, FrictionFactor: unknown, PipeLoss: unknown, FittingLoss: unknown}
+		}
+	}
+	for i := range c.Fittings {
+		c.Fittings[i].Loss, c.Fittings[i].Drop, c.Fittings[i].Outlet = unknown, unknown, unknown
+	}
+	for i, p := range c.solved.Network.Points {
+		if !p.Fixed {
+			c.Points[i].Head, c.Points[i].GaugePressure = unknown, unknown
+		}
+	}
+}
+
+// beyondCurve says in words where a pump stands that runs off its digitised points.
+func beyondCurve(s *curves.Solved, pump int) string {
+	u := s.Plant.Pumps[pump]
+	low, high := u.Range()
+	end, word, surplusWord := high, "last", "over"
+	if s.PumpFlows[pump] < low {
+		end, word, surplusWord = low, "first", "under"
+	}
+	text := fmt.Sprintf("%s runs beyond the %s digitised point of its curve, %.0f m3/h", u.Name, word, end*3600)
+	if d, err := s.Demand(pump, end); err == nil {
+		head, _ := u.Head(end)
+		text += fmt.Sprintf("; there its head is still %.1f m %s what the system asks", math.Abs(head-d.Head), surplusWord)
+	}
+	return text + fmt.Sprintf(" (a straight continuation, which is no data, would meet the system near %.2g m3/h)", s.PumpFlows[pump]*3600)
+}
+
+func runOf(r hydraulics.Run, flow, viscosity float64) Run {
+	out := Run{Run: r.Name, Flow: Figure(flow * 3600), Velocity: unknown, Reynolds: unknown, FrictionFactor: unknown, PipeLoss: unknown, FittingLoss: unknown, Shut: r.Shut}
+	if r.Shut {
+		return out
+	}
+	out.Velocity = Figure(flow / r.Pipe.Area())
+	re := r.Pipe.Reynolds(flow, viscosity)
+	out.Reynolds = Figure(re)
+	out.Regime = hydraulics.RegimeOf(re).String()
+	if f, _, err := hydraulics.FrictionFactor(re, r.Pipe.Roughness/r.Pipe.ClearBore()); err == nil && r.Pipe.Length > 0 {
+		out.FrictionFactor = Figure(f)
+	}
+	pipe, _ := r.Pipe.Loss(flow, viscosity)
+	fittings := 0.0
+	for _, f := range r.Fittings {
+		h, _ := f.Loss(flow, r.Pipe, viscosity)
+		fittings += h
+	}
+	out.PipeLoss, out.FittingLoss = Figure(pipe), Figure(fittings)
+	return out
+}
+
+func fittingsOf(s *curves.Solved, run int) []Fitting {
+	r := s.Network.Runs[run]
+	var list []Fitting
+	for _, f := range r.Fittings {
+		h, _ := f.Loss(s.RunFlows[run], r.Pipe, s.Network.Viscosity)
+		row := Fitting{Run: r.Name, Tag: f.Tag, Fitting: f.Name, Loss: Figure(h), Drop: Figure(h * s.Water.Density * hydraulics.Gravity / 1e5), Outlet: unknown}
+		if r.Shut {
+			row.Loss, row.Drop = unknown, unknown
+		}
+		list = append(list, row)
+	}
+	return list
+}
+
+// outlets works out the temperature of the water that leaves each fitting that takes up a heat, from the heat balance
+// alone: t = t_in + heat/(rho c Q), t_in being the condition's temperature.
+func outlets(j *job.Job, c *Condition) {
+	for _, row := range j.Tables.Fittings {
+		if !row.Heat.Given {
+			continue
+		}
+		for i := range c.Fittings {
+			f := &c.Fittings[i]
+			if f.Run != row.Run.Value || f.Tag != row.Tag.Value || f.Fitting != row.Fitting.Value {
+				continue
+			}
+			for _, r := range c.Runs {
+				if strings.EqualFold(r.Run, f.Run) && r.Flow != 0 {
+					w := c.solved.Water
+					f.Outlet = Figure(w.Celsius + row.Heat.Value/(w.Density*w.HeatCapacity*math.Abs(float64(r.Flow))/3600))
+				}
+			}
+		}
+	}
+}
+
+// Met says whether every limit judged is met and none is left unjudged.
+func (a *Check) Met() bool {
+	for _, c := range a.Conditions {
+		for _, f := range c.Findings {
+			if f.Verdict != Met {
+				return false
+			}
+		}
+	}
+	return true
+}
+
+// NotConverged returns the first condition whose solution did not settle, or nil.
+func (a *Check) NotConverged() error {
+	for _, err := range a.Failed {
+		var stuck *hydraulics.NotConverged
+		if errors.As(err, &stuck) {
+			return err
+		}
+	}
+	return nil
+}

@@ -1,0 +1,357 @@
+package study
+
+import (
+	"errors"
+	"fmt"
+	"math"
+	"strings"
+
+	"brinehead/cmd/brinehead/internal/job"
+	"brinehead/curves"
+	"brinehead/hydraulics"
+)
+
+// Verdict is the outcome of judging a limit.
+type Verdict string
+
+// The verdicts. Not judged is no pass.
+const (
+	Met       Verdict = "met"
+	NotMet    Verdict = "not met"
+	NotJudged Verdict = "not judged"
+)
+
+// Finding is one limit judged in one condition.
+type Finding struct {
+	Limit      string  `json:"limit"`
+	On         string  `json:"on"`
+	Value      Figure  `json:"value"`
+	LimitValue Figure  `json:"limit_value"`
+	Unit       string  `json:"unit"`
+	Verdict    Verdict `json:"verdict"`
+	Reason     string  `json:"reason"`
+	Source     string  `json:"source"` // limits.csv with its line, or the default's source
+}
+
+// limit is one thing that must hold.
+type limit struct {
+	name      string // canonical, as in limitKinds
+	on        string // a name, or * for all that the limit can be on
+	value     float64
+	condition string // or empty for all
+	source    string
+	byDefault bool
+}
+
+// limitKind is a kind of limit: what it may be on, its unit in findings, whether the value must not fall below it,
+// and how the value is read from a condition (in that unit).
+type limitKind struct {
+	name  string
+	unit  string
+	scale float64 // unit of findings over the SI unit of the table
+	least bool
+	on    []string // pumps, runs, points, seas, tags; what * stands for is the first
+	value func(c *Condition, kind string, index int) (value Figure, why string)
+}
+
+// limitKinds is the list of every limit that can be judged.
+var limitKinds = []limitKind{
+	{"minimum flow", "m3/h", 3600, true, []string{"pumps", "runs", "tags"}, flowOf},
+	{"maximum flow", "m3/h", 3600, false, []string{"pumps", "runs", "tags"}, flowOf},
+	{"NPSH margin", "m", 1, true, []string{"pumps"}, func(c *Condition, _ string, i int) (Figure, string) {
+		return c.Pumps[i].NPSHMargin, noNPSH(c, i)
+	}},
+	{"NPSH ratio", "-", 1, true, []string{"pumps"}, func(c *Condition, _ string, i int) (Figure, string) {
+		return c.Pumps[i].NPSHAvailable / c.Pumps[i].NPSHRequired, noNPSH(c, i)
+	}},
+	{"maximum velocity", "m/s", 1, false, []string{"runs"}, velocityOf},
+	{"minimum velocity", "m/s", 1, true, []string{"runs"}, velocityOf},
+	{"maximum shaft power", "kW", 1e-3, false, []string{"pumps"}, func(c *Condition, _ string, i int) (Figure, string) {
+		return c.Pumps[i].ShaftPower, "the pump sheet gives neither efficiency nor power at this flow"
+	}},
+	{"least share of best-efficiency flow", "%", 100, true, []string{"pumps"}, shareOf},
+	{"greatest share of best-efficiency flow", "%", 100, false, []string{"pumps"}, shareOf},
+	{"minimum pressure", "bar", 1e-5, true, []string{"points"}, func(c *Condition, _ string, i int) (Figure, string) {
+		return c.Points[i].GaugePressure, "the point is cut off by shut runs"
+	}},
+	{"minimum immersion", "m", 1, true, []string{"seas"}, func(c *Condition, _ string, i int) (Figure, string) {
+		return c.Draught - Figure(c.elevations[i]), "the condition gives no draught"
+	}},
+	{"maximum outlet temperature", "degC", 1, false, []string{"tags"}, func(c *Condition, _ string, i int) (Figure, string) {
+		return c.Fittings[i].Outlet, "no heat [kW] is given for it, or no water flows"
+	}},
+}
+
+func flowOf(c *Condition, kind string, i int) (Figure, string) {
+	switch kind {
+	case "pumps":
+		return c.Pumps[i].Flow, ""
+	case "tags":
+		for _, r := range c.Runs {
+			if r.Run == c.Fittings[i].Run {
+				return r.Flow, ""
+			}
+		}
+	}
+	return c.Runs[i].Flow, ""
+}
+
+func velocityOf(c *Condition, _ string, i int) (Figure, string) {
+	return Figure(math.Abs(float64(c.Runs[i].Velocity))), ""
+}
+
+func shareOf(c *Condition, _ string, i int) (Figure, string) {
+	return 100 * c.Pumps[i].BestShare, "the pump sheet does not show its best-efficiency point"
+}
+
+func noNPSH(c *Condition, i int) string {
+	low, high, given := c.solved.Plant.Pumps[i].NPSHRequiredRange()
+	if !given {
+		return "the pump sheet gives no NPSH required"
+	}
+	return fmt.Sprintf("the pump sheet gives NPSH required from %.0f to %.0f m3/h only, and the pump runs at %.0f m3/h",
+		low*3600, high*3600, float64(c.Pumps[i].Flow))
+}
+
+// Defaults of common practice, judged where limits.csv names no limit of the kind.
+const (
+	practice        = "default, common practice"
+	defaultVelocity = 3.0 // m/s
+	leastShare      = 70.0
+	greatestShare   = 120.0
+)
+
+var defaultSources = map[string]string{
+	"NPSH margin":                            practice + ": 0.6 m from 70 to 120 % of best-efficiency flow, 1.0 m outside (after ANSI/HI 9.6.1-2012, from a summary)",
+	"NPSH ratio":                             practice + ": 1.1 from 70 to 120 % of best-efficiency flow, 1.2 outside (after ANSI/HI 9.6.1-2012, from a summary)",
+	"maximum velocity":                       practice + ": 3.0 m/s in sea-water and fresh-water pipes of engines (an engine maker's project guide)",
+	"least share of best-efficiency flow":    practice + ": 70 %, preferred region (after ANSI/HI 9.6.3-2012, from an article)",
+	"greatest share of best-efficiency flow": practice + ": 120 %, preferred region (after ANSI/HI 9.6.3-2012, from an article)",
+	"maximum shaft power":                    "the motor's rating in pumps.csv",
+}
+
+// limits are the limits of a job, its own and the defaults.
+type limits struct {
+	list     []limit
+	defaults []string // kinds judged by default
+}
+
+func newLimits(j *job.Job) *limits {
+	l := &limits{}
+	named := map[string]bool{}
+	for _, row := range j.Tables.Limits {
+		for _, k := range limitKinds {
+			if !strings.EqualFold(k.name, row.Limit.Value) {
+				continue
+			}
+			named[k.name] = true
+			l.list = append(l.list, limit{name: k.name, on: row.On.Value, value: row.Value.Value * k.scale, condition: row.Condition.Value,
+				source: fmt.Sprintf("%s, line %d", row.Limit.File, row.Limit.Line)})
+		}
+	}
+	for _, k := range limitKinds {
+		source, has := defaultSources[k.name]
+		if named[k.name] || !has {
+			continue
+		}
+		l.defaults = append(l.defaults, k.name)
+		l.list = append(l.list, limit{name: k.name, on: "*", value: math.NaN(), source: source, byDefault: true})
+	}
+	return l
+}
+
+// notes says which limits come from defaults.
+func (l *limits) notes() []string {
+	if len(l.defaults) == 0 {
+		return nil
+	}
+	return []string{"judged by default, since limits.csv names none of the kind: " + strings.Join(l.defaults, ", ")}
+}
+
+// judge judges every limit in a condition. A condition without a solution has every limit not judged.
+func (l *limits) judge(c *Condition, plant *curves.Plant, row job.ConditionRow, failure error) []Finding {
+	c.elevations = plant.Elevations
+	var findings []Finding
+	for _, k := range limitKinds {
+		for _, lim := range l.list {
+			if lim.name != k.name || lim.condition != "" && !strings.EqualFold(lim.condition, row.Condition.Value) {
+				continue
+			}
+			findings = append(findings, k.judge(c, plant, lim, failure)...)
+		}
+	}
+	return findings
+}
+
+// judge judges one limit on each thing it is on.
+func (k limitKind) judge(c *Condition, plant *curves.Plant, lim limit, failure error) []Finding {
+	var findings []Finding
+	for _, kind := range k.on {
+		for i, name := range namesOf(kind, plant) {
+			if name == "" || lim.on != "*" && !strings.EqualFold(lim.on, name) {
+				continue
+			}
+			if f, applies := k.finding(c, plant, lim, kind, i, failure); applies {
+				f.On = name
+				findings = append(findings, f)
+			}
+		}
+		if lim.on == "*" {
+			break // all of the first kind
+		}
+	}
+	return findings
+}
+
+// namesOf lists what a limit can be on; an empty name is none.
+func namesOf(kind string, plant *curves.Plant) []string {
+	var names []string
+	switch kind {
+	case "pumps":
+		for _, p := range plant.Pumps {
+			names = append(names, p.Name)
+		}
+	case "runs":
+		for _, r := range plant.Network.Runs {
+			names = append(names, r.Name)
+		}
+	case "points":
+		for _, p := range plant.Network.Points {
+			names = append(names, p.Name)
+		}
+	case "seas":
+		for i, p := range plant.Network.Points {
+			if !plant.SeaInlets[i] {
+				p.Name = ""
+			}
+			names = append(names, p.Name)
+		}
+	case "tags":
+		for _, r := range plant.Network.Runs {
+			for _, f := range r.Fittings {
+				names = append(names, f.Tag)
+			}
+		}
+	}
+	return names
+}
+
+// finding judges one limit on one thing. It does not apply to an idle pump or a shut run, unless the limit was set for
+// this very thing in this very condition: then it is not judged, with the reason.
+func (k limitKind) finding(c *Condition, plant *curves.Plant, lim limit, kind string, i int, failure error) (f Finding, applies bool) {
+	f = Finding{Limit: k.name, Value: unknown, LimitValue: Figure(lim.value), Unit: k.unit, Verdict: NotJudged, Source: lim.source}
+	asked := lim.on != "*" && lim.condition != ""
+	if kind == "pumps" && !plant.Pumps[i].Running {
+		f.Reason = "the pump does not run in this condition"
+		return f, asked
+	}
+	if kind == "runs" && k.unit == "m/s" && plant.Network.Runs[i].Shut {
+		f.Reason = "the run is shut in this condition"
+		return f, asked
+	}
+	if kind == "runs" && k.least && k.unit == "m/s" && lim.on == "*" && failure == nil && c.Runs[i].Flow == 0 {
+		return f, false // a standby branch at rest has no velocity to keep
+	}
+	if lim.byDefault {
+		lim.value = k.defaultValue(c, plant, i, failure)
+		if f.LimitValue = Figure(lim.value); !f.LimitValue.Known() {
+			return f, false // no motor rating: nothing to hold the power against
+		}
+	}
+	if failure != nil {
+		f.Reason = reasonOf(failure)
+		return f, true
+	}
+	value, why := k.value(c, kind, i)
+	f.Value = value
+	if !value.Known() {
+		f.Value, f.Reason = unknown, c.whyUnknown(why)
+		return f, true
+	}
+	ok := float64(value) <= lim.value
+	if k.least {
+		ok = float64(value) >= lim.value
+	}
+	if ok {
+		f.Verdict = Met
+	} else {
+		f.Verdict = NotMet
+	}
+	f.Reason = f.Worded(float64(value), lim.value, k.unit)
+	return f, true
+}
+
+// Worded says a judged finding in words, its value and its limit given in a unit of the caller's choice.
+func (f Finding) Worded(value, limitValue float64, unit string) string {
+	word := "at most"
+	for _, k := range limitKinds {
+		if k.name == f.Limit && k.least {
+			word = "at least"
+		}
+	}
+	// Enough digits to tell the two apart, and no more than they are worth.
+	digits := 3
+	for digits < 8 && value != limitValue && short(value, digits) == short(limitValue, digits) {
+		digits++
+	}
+	return fmt.Sprintf("%s %s, want %s %s", short(value, digits), unit, word, short(limitValue, digits))
+}
+
+// defaultValue returns the default of a limit for a pump or a run, in the unit of findings.
+func (k limitKind) defaultValue(c *Condition, plant *curves.Plant, i int, failure error) float64 {
+	switch k.name {
+	case "maximum velocity":
+		return defaultVelocity
+	case "least share of best-efficiency flow":
+		return leastShare
+	case "greatest share of best-efficiency flow":
+		return greatestShare
+	case "maximum shaft power":
+		return plant.Pumps[i].Motor / 1e3
+	}
+	preferred := false // an unknown share counts as outside: the stricter rule
+	if failure == nil {
+		share := 100 * float64(c.Pumps[i].BestShare)
+		preferred = leastShare <= share && share <= greatestShare
+	}
+	switch {
+	case k.name == "NPSH margin" && preferred:
+		return 0.6
+	case k.name == "NPSH margin":
+		return 1.0
+	case preferred:
+		return 1.1
+	}
+	return 1.2
+}
+
+// whyUnknown gives the reason of a figure that is not known: the running pump that is off its curve where there is
+// one, or else the kind's own.
+func (c *Condition) whyUnknown(own string) string {
+	for _, p := range c.Pumps {
+		if p.Extrapolated {
+			return p.Pump + " runs beyond its digitised curve in this condition, and every flow rests on it"
+		}
+	}
+	if own == "" {
+		own = "not known"
+	}
+	return own
+}
+
+func reasonOf(err error) string {
+	var stuck *hydraulics.NotConverged
+	if errors.As(err, &stuck) {
+		return "the calculation did not converge: " + err.Error()
+	}
+	return err.Error()
+}
+
+// short formats a figure with a number of significant digits, without an exponent.
+func short(x float64, digits int) string {
+	if x == 0 || math.IsNaN(x) || math.IsInf(x, 0) {
+		return fmt.Sprintf("%g", x)
+	}
+	places := digits - 1 - int(math.Floor(math.Log10(math.Abs(x))))
+	return fmt.Sprintf("%.*f", max(places, 0), x)
+}

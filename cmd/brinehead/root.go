@@ -1,0 +1,149 @@
+package main
+
+import (
+	"errors"
+	"fmt"
+	"io"
+	"runtime/debug"
+	"slices"
+	"strings"
+
+	"github.com/spf13/cobra"
+
+	"brinehead/cmd/brinehead/internal/job"
+	"brinehead/cmd/brinehead/internal/report"
+	"brinehead/hydraulics"
+)
+
+// streams are where a command writes: results to out, all else to err.
+type streams struct {
+	out, err io.Writer
+}
+
+// Exit codes; a contract.
+const (
+	exitMet          = 0 // every limit judged is met
+	exitNotMet       = 1 // a limit is not met, or could not be judged
+	exitInput        = 2 // the input or the command line is wrong
+	exitNotConverged = 3 // the calculation did not converge
+)
+
+// errNotMet ends a command whose answer is written and says that a limit is not met or not judged.
+var errNotMet = errors.New("a limit is not met or could not be judged")
+
+// run is main without the process: it returns the exit code.
+func run(s streams, args []string) int {
+	root := newRoot(s)
+	root.SetArgs(args)
+	err := root.Execute()
+	code := exitCode(err)
+	if err != nil && !errors.Is(err, errNotMet) {
+		fmt.Fprintln(s.err, err)
+	}
+	return code
+}
+
+// exitCode is the one place where errors are told apart.
+func exitCode(err error) int {
+	var stuck *hydraulics.NotConverged
+	switch {
+	case err == nil:
+		return exitMet
+	case errors.Is(err, errNotMet):
+		return exitNotMet
+	case errors.As(err, &stuck):
+		return exitNotConverged
+	}
+	return exitInput
+}
+
+func newRoot(s streams) *cobra.Command {
+	root := &cobra.Command{
+		Use:   "brinehead",
+		Short: "Shows whether a ship's cooling-water pumps do their duty",
+		Long: "Brinehead reads a job folder of tables (points, runs, fittings, pumps, pump curves, conditions) and says, for\n" +
+			"every condition, where each pump runs, what margin its suction keeps, and which limits are met.\n\n" +
+			"Exit codes: 0 every limit judged is met; 1 a limit is not met, or could not be judged; 2 the input or the\n" +
+			"command line is wrong; 3 the calculation did not converge.",
+		Version:           version(),
+		SilenceErrors:     true,
+		SilenceUsage:      true,
+		CompletionOptions: cobra.CompletionOptions{HiddenDefaultCmd: true},
+	}
+	root.SetOut(s.out)
+	root.SetErr(s.err)
+	root.SetFlagErrorFunc(func(c *cobra.Command, err error) error {
+		return fmt.Errorf("%w\n\thint: %s --help lists the flags", err, c.CommandPath())
+	})
+	root.AddCommand(newCheck(s))
+	return root
+}
+
+// version is that of the module where it was built as one, or else "development".
+func version() string {
+	if info, ok := debug.ReadBuildInfo(); ok && info.Main.Version != "" && info.Main.Version != "(devel)" {
+		return info.Main.Version
+	}
+	return "development"
+}
+
+// common are the flags that every command on a job takes.
+type common struct {
+	format     string
+	out        string
+	change     string
+	conditions []string
+	unitSystem string
+
+	units report.Units
+}
+
+// formats are the values of --format.
+var formats = []string{"text", "json", "csv"}
+
+func addCommon(c *cobra.Command, o *common) {
+	f := c.Flags()
+	f.StringVar(&o.format, "format", "text", "what to print: "+strings.Join(formats, ", "))
+	f.StringVar(&o.out, "out", "", "folder to write tables and plots into")
+	f.StringVar(&o.change, "change", "", "folder with the tables that a planned change rewrites")
+	f.StringArrayVar(&o.conditions, "condition", nil, "only this condition (may be given again)")
+	f.StringVar(&o.unitSystem, "units", "metric", "units of text and csv: "+strings.Join(report.UnitSystems, ", "))
+	for flag, values := range map[string][]string{"format": formats, "units": report.UnitSystems} {
+		if err := c.RegisterFlagCompletionFunc(flag, cobra.FixedCompletions(values, cobra.ShellCompDirectiveNoFileComp)); err != nil {
+			panic("a flag just made is not there: " + err.Error())
+		}
+	}
+}
+
+// parse checks the flags that have a list of values.
+func (o *common) parse() (err error) {
+	if !slices.Contains(formats, o.format) {
+		return fmt.Errorf("format: found %q, want one of %s", o.format, strings.Join(formats, ", "))
+	}
+	o.units, err = report.ParseUnits(o.unitSystem)
+	return err
+}
+
+// oneJob wants the job folder as the one argument.
+func oneJob(c *cobra.Command, args []string) error {
+	if len(args) != 1 {
+		return fmt.Errorf("%s needs the job folder, and nothing else: %s", c.Name(), c.UseLine())
+	}
+	return nil
+}
+
+// readJob reads the job folder and its change folder.
+func (o *common) readJob(folder string) (*job.Job, error) {
+	files, err := openFolder(folder)
+	if err != nil {
+		return nil, err
+	}
+	if o.change == "" {
+		return job.Read(folderName(folder), files, nil)
+	}
+	change, err := openFolder(o.change)
+	if err != nil {
+		return nil, err
+	}
+	return job.Read(folderName(folder), files, change)
+}

@@ -68,7 +68,7 @@ func (p *Plant) link() {
 }
 
 // weight returns the weight of a cubic metre of the water, N/m3.
-func (p *Plant) weight() float64 { return p.Water.Density * hydraulics.Gravity }
+func (p *Plant) weight() float64 { return p.Water.Density * fluids.Gravity }
 
 // NPSHAvailable returns the NPSH (m) at a pump's datum under a total head (m) at its suction point:
 //
@@ -111,7 +111,7 @@ func (s *Solved) GaugePressure(point int) float64 {
 		for i, r := range s.Network.Runs {
 			if r.From == point || r.To == point {
 				v := s.RunFlows[i] / r.Pipe.Area()
-				velocityHead = math.Max(velocityHead, v*v/(2*hydraulics.Gravity))
+				velocityHead = math.Max(velocityHead, v*v/(2*fluids.Gravity))
 			}
 		}
 	}

@@ -9,22 +9,3 @@
 // single fittings scatter by 20 to 50 % (Hydraulic Institute, Engineering Data Book). Results are exact answers
 // to the question put, not to the state of the pipe.
 package hydraulics
-
-import "fmt"
-
-// Gravity is the standard acceleration of free fall, m/s2 (ISO 80000-3, exact by definition).
-const Gravity = 9.80665
-
-// RangeError tells that a method was asked for something outside the range it was published for.
-type RangeError struct {
-	Method   string // the method, such as "Colebrook friction factor"
-	Quantity string // the quantity out of range, with its unit where it has one
-	Value    float64
-	Low      float64
-	High     float64
-}
-
-// Error says what was found and what the method allows.
-func (e *RangeError) Error() string {
-	return fmt.Sprintf("%s: %s %g is outside %g to %g", e.Method, e.Quantity, e.Value, e.Low, e.High)
-}

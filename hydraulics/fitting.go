@@ -1,6 +1,7 @@
 package hydraulics
 
 import (
+	"brinehead/fluids"
 	"fmt"
 	"math"
 )
@@ -79,15 +80,15 @@ func (f Fitting) law(pipe Pipe, nu float64) lossLaw {
 	law := lossLaw{exponent: 2, soft: creepingReynolds * math.Pi / 4 * pipe.ClearBore() * nu}
 	switch {
 	case f.Kv > 0:
-		law.power = 1e5 / (1000 * Gravity) * (3600 / f.Kv) * (3600 / f.Kv)
+		law.power = 1e5 / (1000 * fluids.Gravity) * (3600 / f.Kv) * (3600 / f.Kv)
 	case f.RatedFlow > 0:
 		if f.Exponent != 0 {
 			law.exponent = f.Exponent
 		}
-		law.power = f.RatedDrop / (f.RatedDensity * Gravity) / math.Pow(f.RatedFlow, law.exponent)
+		law.power = f.RatedDrop / (f.RatedDensity * fluids.Gravity) / math.Pow(f.RatedFlow, law.exponent)
 	default:
-		law.power = f.Coefficient.K / (2 * Gravity * area * area)
-		law.linear = f.Coefficient.Viscous * nu / (2 * Gravity * bore * area)
+		law.power = f.Coefficient.K / (2 * fluids.Gravity * area * area)
+		law.linear = f.Coefficient.Viscous * nu / (2 * fluids.Gravity * bore * area)
 	}
 	factor := float64(max(f.Count, 1))
 	if f.Blockage > 0 {

@@ -1,6 +1,9 @@
 package hydraulics
 
-import "math"
+import (
+	"brinehead/fluids"
+	"math"
+)
 
 // Regime is the state of flow in a pipe.
 type Regime int
@@ -45,14 +48,14 @@ func RegimeOf(re float64) Regime {
 // (F. N. Fritsch and R. E. Carlson, SIAM J. Numerical Analysis 17 (1980) 238-246), so that the loss of a pipe
 // always grows with its flow.
 //
-// Range: 0 < re <= 1e8, 0 <= rel <= 0.05; outside it, or for NaN, the results are NaN and a [*RangeError].
+// Range: 0 < re <= 1e8, 0 <= rel <= 0.05; outside it, or for NaN, the results are NaN and a [*fluids.RangeError].
 func FrictionFactor(re, rel float64) (f, slope float64, err error) {
 	const method = "Darcy friction factor"
 	if !(0 < re && re <= GreatestReynolds) { // so written that NaN fails
-		return math.NaN(), math.NaN(), &RangeError{method, "Reynolds number", re, 0, GreatestReynolds}
+		return math.NaN(), math.NaN(), &fluids.RangeError{Method: method, Quantity: "Reynolds number", Value: re, Low: 0, High: GreatestReynolds}
 	}
 	if !(0 <= rel && rel <= GreatestRelRoughness) {
-		return math.NaN(), math.NaN(), &RangeError{method, "roughness over bore", rel, 0, GreatestRelRoughness}
+		return math.NaN(), math.NaN(), &fluids.RangeError{Method: method, Quantity: "roughness over bore", Value: rel, Low: 0, High: GreatestRelRoughness}
 	}
 	loss, lossSlope := reducedLoss(re, rel)
 	f = loss / (re * re)
@@ -66,15 +69,15 @@ func FrictionFactor(re, rel float64) (f, slope float64, err error) {
 // where re is the Reynolds number on the bore and rel the roughness over the bore.
 //
 // Source: C. F. Colebrook, J. Inst. Civil Engineers 11 (1939) 133-156.
-// Range: 4000 <= re <= 1e8, 0 <= rel <= 0.05; outside it, or for NaN, the result is NaN and a [*RangeError].
+// Range: 4000 <= re <= 1e8, 0 <= rel <= 0.05; outside it, or for NaN, the result is NaN and a [*fluids.RangeError].
 // Accuracy: the root is found to better than 1e-14, relative; of the law itself, see the package comment.
 func Colebrook(re, rel float64) (f float64, err error) {
 	const method = "Colebrook friction factor"
 	if !(TurbulentLimit <= re && re <= GreatestReynolds) {
-		return math.NaN(), &RangeError{method, "Reynolds number", re, TurbulentLimit, GreatestReynolds}
+		return math.NaN(), &fluids.RangeError{Method: method, Quantity: "Reynolds number", Value: re, Low: TurbulentLimit, High: GreatestReynolds}
 	}
 	if !(0 <= rel && rel <= GreatestRelRoughness) {
-		return math.NaN(), &RangeError{method, "roughness over bore", rel, 0, GreatestRelRoughness}
+		return math.NaN(), &fluids.RangeError{Method: method, Quantity: "roughness over bore", Value: rel, Low: 0, High: GreatestRelRoughness}
 	}
 	f, _ = colebrook(re, rel)
 	return f, nil

@@ -1,6 +1,7 @@
 package hydraulics
 
 import (
+	"brinehead/fluids"
 	"encoding/csv"
 	"errors"
 	"math"
@@ -113,7 +114,7 @@ func TestFrictionRefusals(t *testing.T) {
 		{math.NaN(), 0}, {1e5, math.NaN()}, {0, 0}, {-1, 0}, {1.1e8, 0}, {math.Inf(1), 0}, {1e5, -1e-9}, {1e5, 0.051},
 	} {
 		f, slope, err := FrictionFactor(c.re, c.rel)
-		var out *RangeError
+		var out *fluids.RangeError
 		if !math.IsNaN(f) || !math.IsNaN(slope) || !errors.As(err, &out) {
 			t.Errorf("%v: %g, %g, %v; want NaN and a range error", c, f, slope, err)
 		}

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"brinehead/fluids"
 	"brinehead/hydraulics"
 )
 
@@ -125,7 +126,7 @@ func ExampleSolver_twoLoops() {
 	pipe := func(name string, from, to int, inches float64) hydraulics.Run {
 		drop := 10.667 * 1000 / math.Pow(130, 1.852) / math.Pow(inches*inch, 4.8704) // m at 1 m3/s
 		return hydraulics.Run{Name: name, From: from - 1, To: to - 1, Pipe: hydraulics.Pipe{Bore: inches * inch},
-			Fittings: []hydraulics.Fitting{{Name: "pipe", RatedFlow: 1, RatedDrop: drop * 1000 * hydraulics.Gravity, RatedDensity: 1000, Exponent: 1.852}}}
+			Fittings: []hydraulics.Fitting{{Name: "pipe", RatedFlow: 1, RatedDrop: drop * 1000 * fluids.Gravity, RatedDensity: 1000, Exponent: 1.852}}}
 	}
 	n := &hydraulics.Network{Viscosity: 1e-6, Points: []hydraulics.Point{{Name: "1", Fixed: true, Head: 210}}}
 	elevation := []float64{210, 150, 160, 155, 150, 165, 160}

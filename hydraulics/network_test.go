@@ -1,6 +1,7 @@
 package hydraulics
 
 import (
+	"brinehead/fluids"
 	"errors"
 	"fmt"
 	"math"
@@ -410,7 +411,7 @@ func TestParallelPumpsExactly(t *testing.T) {
 	for count, want := range map[int]float64{1: 1045.82503, 2: 1233.58791} {
 		n := &Network{Viscosity: 1e-6, Points: []Point{{Name: "low", Fixed: true}, {Name: "header"}, {Name: "high", Fixed: true, Head: 5}},
 			Runs: []Run{{Name: "system", From: 1, To: 2, Pipe: Pipe{Bore: 0.4},
-				Fittings: []Fitting{{RatedFlow: 1000 / hour, RatedDrop: 20 * 1000 * Gravity, RatedDensity: 1000}}}}}
+				Fittings: []Fitting{{RatedFlow: 1000 / hour, RatedDrop: 20 * 1000 * fluids.Gravity, RatedDensity: 1000}}}}}
 		for range count {
 			n.Pumps = append(n.Pumps, PumpLink{Name: "P", From: 0, To: 1, Drive: parabolicPump{40, 1.2e-5 * hour * hour}, Running: true})
 		}

@@ -1,6 +1,7 @@
 package hydraulics
 
 import (
+	"brinehead/fluids"
 	"fmt"
 	"math"
 )
@@ -71,7 +72,7 @@ func (p Pipe) law(nu float64) frictionLaw {
 	return frictionLaw{
 		reynolds: p.Reynolds(1, nu),
 		rel:      p.Roughness / d,
-		scale:    p.Length / d * (nu / d) * (nu / d) / (2 * Gravity),
+		scale:    p.Length / d * (nu / d) * (nu / d) / (2 * fluids.Gravity),
 	}
 }
 

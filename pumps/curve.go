@@ -1,12 +1,10 @@
 package pumps
 
 import (
+	"brinehead/fluids"
 	"fmt"
 	"math"
 )
-
-// Gravity is the standard acceleration of free fall, m/s2 (ISO 80000-3, exact by definition).
-const Gravity = 9.80665
 
 // sheetDensity is the density that the powers of a sheet stand for, kg/m3.
 const sheetDensity = 1000.0
@@ -93,7 +91,7 @@ func (c *Curve) efficiencyAt(flow float64) (efficiency, slope float64, known boo
 		if !(power > 0) {
 			return math.NaN(), math.NaN(), false
 		}
-		const weight = sheetDensity * Gravity
+		const weight = sheetDensity * fluids.Gravity
 		efficiency = weight * flow * head / power
 		slope = weight*(head+flow*headSlope)/power - efficiency*powerSlope/power
 		return efficiency, slope, c.head.Within(flow) && c.power.Within(flow)

@@ -1,6 +1,9 @@
 package pumps
 
-import "math"
+import (
+	"brinehead/fluids"
+	"math"
+)
 
 // Pump is a digitised curve as it stands aboard: at its speed, with its wear.
 type Pump struct {
@@ -120,5 +123,5 @@ func (p Pump) shaftPower(x float64) float64 {
 		return math.NaN()
 	}
 	head, _ := c.head.At(x)
-	return sheetDensity * Gravity * x * head / efficiency
+	return sheetDensity * fluids.Gravity * x * head / efficiency
 }

@@ -1,6 +1,7 @@
 package pumps
 
 import (
+	"brinehead/fluids"
 	"math"
 	"math/rand/v2"
 	"strings"
@@ -16,7 +17,7 @@ func fullSheet(t testing.TB, withPower bool) *Curve {
 		x := q / 400
 		p := SheetPoint{Flow: q / 3600, Head: 31 - 7*x*x, Efficiency: 0.82 * (1 - (x-1)*(x-1)), Power: math.NaN(), NPSHRequired: math.NaN()}
 		if withPower {
-			p.Power, p.Efficiency = 1000*Gravity*p.Flow*p.Head/p.Efficiency, math.NaN()
+			p.Power, p.Efficiency = 1000*fluids.Gravity*p.Flow*p.Head/p.Efficiency, math.NaN()
 		}
 		if 160 <= q && q <= 480 {
 			p.NPSHRequired = 2 + 1.5*x*x
@@ -57,7 +58,7 @@ func TestPowerAndEfficiencyAgree(t *testing.T) {
 		if !(math.Abs(x.ShaftPower/y.ShaftPower-1) < 3e-3) || !(math.Abs(x.Efficiency/y.Efficiency-1) < 3e-3) {
 			t.Errorf("%g m3/h: %+v and %+v", q, x, y)
 		}
-		if want := 1025 * Gravity * x.Flow * x.Head / x.Efficiency; !(math.Abs(x.ShaftPower/want-1) < 1e-12) {
+		if want := 1025 * fluids.Gravity * x.Flow * x.Head / x.Efficiency; !(math.Abs(x.ShaftPower/want-1) < 1e-12) {
 			t.Errorf("%g m3/h: power %g, rho g Q H / eta %g", q, x.ShaftPower, want)
 		}
 	}

@@ -98,6 +98,12 @@ func (j *Job) Conditions() []string {
 	return names
 }
 
+// Condition returns a condition's row; the name must be one of Conditions.
+func (j *Job) Condition(name string) ConditionRow {
+	row, _ := j.condition(name)
+	return row
+}
+
 // condition finds a condition's row.
 func (j *Job) condition(name string) (ConditionRow, error) {
 	for _, c := range j.Tables.Conditions {
@@ -105,7 +111,7 @@ func (j *Job) condition(name string) (ConditionRow, error) {
 			return c, nil
 		}
 	}
-	return ConditionRow{}, Faults{{Found: name, Want: "a condition of the job: " + strings.Join(j.Conditions(), ", "),
+	return ConditionRow{}, Faults{{Place: Place{Column: "condition"}, Found: quoted(name), Want: "a condition of the job: " + strings.Join(j.Conditions(), ", "),
 		Hint: nearestHint(name, j.Conditions())}}
 }
 
@@ -238,7 +244,7 @@ func (b *builder) fitting(r FittingRow) hydraulics.Fitting {
 		Kv:           b.number(element, "kv", r.Kv).Or(0),
 		RatedFlow:    r.RatedFlow.Or(0),
 		RatedDrop:    b.number(element, "rated drop", r.RatedDrop).Or(0),
-		RatedDensity: ratingDensity,
+		RatedDensity: r.RatedDensity.Or(ratingDensity),
 		Exponent:     r.Exponent.Or(0),
 		Blockage:     b.number(element, "blockage", r.Blockage).Or(0),
 		NonReturn:    isNonReturn(r.Fitting.Value),

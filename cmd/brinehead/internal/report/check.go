@@ -5,6 +5,7 @@ import (
 	"encoding/json"
 	"fmt"
 	"io"
+	"slices"
 	"strings"
 
 	"brinehead/cmd/brinehead/internal/study"
@@ -22,25 +23,23 @@ func WriteCheckJSON(w io.Writer, a *study.Check) error {
 }
 
 // WriteCheckText writes the answer for reading: the verdict first, then what is not met and what could not be judged,
-// then every condition's operating points. Where the answer is of one condition its runs follow.
+// then every condition's operating points. Where the answer is of one condition its runs and points follow.
 func WriteCheckText(w io.Writer, a *study.Check, u Units) error {
-	var lines []string
-	lines = append(lines, summary(a)...)
-	for _, v := range []study.Verdict{study.NotMet, study.NotJudged} {
-		lines = append(lines, findings(a, v, u)...)
-	}
+	lines := summary(a)
+	lines = append(lines, notMet(a, u)...)
+	lines = append(lines, notJudged(a)...)
 	for i := range a.Conditions {
 		lines = append(lines, "")
 		lines = append(lines, conditionLines(&a.Conditions[i], u, len(a.Conditions) == 1)...)
 	}
-	if len(a.Notes) > 0 {
-		lines = append(lines, "")
-		for _, n := range a.Notes {
-			lines = append(lines, wrap("Note: "+n, textWidth, "  ")...)
+	if len(a.Defaults) > 0 {
+		lines = append(lines, "", "Judged by default, since limits.csv names none of the kind:")
+		for _, d := range a.Defaults {
+			lines = append(lines, wrap("  ", "    ", d.Limit+": "+d.Source)...)
 		}
 	}
 	lines = append(lines, "")
-	lines = append(lines, wrap(Caution, textWidth, "")...)
+	lines = append(lines, wrap("", "", Caution)...)
 	_, err := io.WriteString(w, strings.Join(lines, "\n")+"\n")
 	return err
 }
@@ -78,22 +77,59 @@ func counted(n int, what string) string {
 	return fmt.Sprintf("%d %ss", n, what)
 }
 
-// findings lists those of one verdict, condition by condition.
-func findings(a *study.Check, v study.Verdict, u Units) []string {
+// notMet lists the limits that are not met, condition by condition.
+func notMet(a *study.Check, u Units) []string {
 	var lines []string
 	for _, c := range a.Conditions {
 		for _, f := range c.Findings {
-			if f.Verdict != v {
-				continue
+			if f.Verdict == study.NotMet {
+				lines = append(lines, wrap("  ", "    ", fmt.Sprintf("%s: %s of %s: %s [%s]", c.Condition, f.Limit, f.On, reason(f, u), f.Origin()))...)
 			}
-			if lines == nil {
-				lines = []string{"", strings.ToUpper(string(v))}
-			}
-			text := fmt.Sprintf("%s: %s of %s: %s", c.Condition, f.Limit, f.On, reason(f, u))
-			lines = append(lines, wrap("  "+text+" ["+f.Source+"]", textWidth, "    ")...)
 		}
 	}
+	if lines != nil {
+		lines = append([]string{"", "NOT MET"}, lines...)
+	}
 	return lines
+}
+
+// notJudged lists the limits that could not be judged, those of a condition that have one reason together.
+func notJudged(a *study.Check) []string {
+	var lines []string
+	for _, c := range a.Conditions {
+		for _, reason := range distinct(c.Findings, func(f study.Finding) string { return f.Reason }) {
+			var limits []string
+			for _, limit := range distinct(c.Findings, func(f study.Finding) string { return f.Limit }) {
+				var things []string
+				for _, f := range c.Findings {
+					if f.Verdict == study.NotJudged && f.Reason == reason && f.Limit == limit {
+						things = append(things, f.On)
+					}
+				}
+				if things != nil {
+					limits = append(limits, limit+" of "+strings.Join(things, ", "))
+				}
+			}
+			if limits != nil {
+				lines = append(lines, wrap("  ", "    ", c.Condition+": "+reason+": "+strings.Join(limits, "; "))...)
+			}
+		}
+	}
+	if lines != nil {
+		lines = append([]string{"", "NOT JUDGED"}, lines...)
+	}
+	return lines
+}
+
+// distinct returns the different values of a text of the findings, in their order.
+func distinct(findings []study.Finding, of func(study.Finding) string) []string {
+	var list []string
+	for _, f := range findings {
+		if v := of(f); !slices.Contains(list, v) {
+			list = append(list, v)
+		}
+	}
+	return list
 }
 
 // reason words a finding in the units asked for.
@@ -106,7 +142,7 @@ func reason(f study.Finding, u Units) string {
 
 // conditionLines writes one condition.
 func conditionLines(c *study.Condition, u Units, withRuns bool) []string {
-	lines := wrap(c.Condition+": "+waterText(c, u), textWidth, "  ")
+	lines := wrap("", "  ", c.Condition+": "+waterText(c, u))
 	pumps := grid{left: 1, head: []string{"pump", "flow " + u.Unit("m3/h"), "head " + u.Unit("m"), "eff. %", "shaft " + u.Unit("kW"),
 		"NPSHA", "NPSHR", "margin", "of best %"}}
 	for _, p := range c.Pumps {
@@ -129,7 +165,7 @@ func conditionLines(c *study.Condition, u Units, withRuns bool) []string {
 		lines = append(lines, pointGrid(c, u).lines("  ")...)
 	}
 	for _, n := range c.Notes {
-		lines = append(lines, wrap("  Note: "+n, textWidth, "    ")...)
+		lines = append(lines, wrap("  ", "    ", "Note: "+n)...)
 	}
 	return lines
 }

@@ -41,20 +41,22 @@ func (g grid) lines(indent string) []string {
 	return out
 }
 
-// wrap breaks text at spaces into lines of at most width characters, the lines after the first behind an indent.
-func wrap(text string, width int, indent string) []string {
+// wrap breaks text at spaces into lines no wider than the terminal, the first behind one indent, the others behind
+// another.
+func wrap(first, rest, text string) []string {
 	var out []string
-	line := ""
+	line, empty := first, true
 	for _, word := range strings.Fields(text) {
 		switch {
-		case line == "":
-			line = word
-		case utf8.RuneCountInString(line)+1+utf8.RuneCountInString(word) > width:
+		case empty:
+			line += word
+		case utf8.RuneCountInString(line)+1+utf8.RuneCountInString(word) > textWidth:
 			out = append(out, line)
-			line = indent + word
+			line = rest + word
 		default:
 			line += " " + word
 		}
+		empty = false
 	}
 	return append(out, line)
 }

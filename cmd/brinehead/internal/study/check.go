@@ -8,6 +8,7 @@ import (
 
 	"brinehead/cmd/brinehead/internal/job"
 	"brinehead/curves"
+	"brinehead/fluids"
 	"brinehead/hydraulics"
 )
 
@@ -17,7 +18,7 @@ type Check struct {
 	Job        string      `json:"job"`
 	Version    string      `json:"version"`
 	Conditions []Condition `json:"conditions"`
-	Notes      []string    `json:"notes"`
+	Defaults   []Default   `json:"defaults"`
 
 	Failed []error `json:"-"` // *NoSolution of each condition that could not be solved
 }
@@ -124,7 +125,7 @@ func Checked(j *job.Job, only []string, version string) (*Check, error) {
 		only = j.Conditions()
 	}
 	limits := newLimits(j)
-	answer := &Check{Job: j.Name, Version: version, Notes: limits.notes()}
+	answer := &Check{Job: j.Name, Version: version, Defaults: limits.defaults}
 	for _, name := range only {
 		plant, err := j.Plant(name)
 		if err != nil {
@@ -233,7 +234,7 @@ func beyondCurve(s *curves.Solved, pump int) string {
 		head, _ := u.Head(end)
 		text += fmt.Sprintf("; there its head is still %.1f m %s what the system asks", math.Abs(head-d.Head), surplusWord)
 	}
-	return text + fmt.Sprintf(" (a straight continuation, which is no data, would meet the system near %.2g m3/h)", s.PumpFlows[pump]*3600)
+	return text + fmt.Sprintf(" (a straight continuation, which is no data, would meet the system near %s m3/h)", short(s.PumpFlows[pump]*3600, 2))
 }
 
 func runOf(r hydraulics.Run, flow, viscosity float64) Run {
@@ -263,7 +264,7 @@ func fittingsOf(s *curves.Solved, run int) []Fitting {
 	var list []Fitting
 	for _, f := range r.Fittings {
 		h, _ := f.Loss(s.RunFlows[run], r.Pipe, s.Network.Viscosity)
-		row := Fitting{Run: r.Name, Tag: f.Tag, Fitting: f.Name, Loss: Figure(h), Drop: Figure(h * s.Water.Density * hydraulics.Gravity / 1e5), Outlet: unknown}
+		row := Fitting{Run: r.Name, Tag: f.Tag, Fitting: f.Name, Loss: Figure(h), Drop: Figure(h * s.Water.Density * fluids.Gravity / 1e5), Outlet: unknown}
 		if r.Shut {
 			row.Loss, row.Drop = unknown, unknown
 		}

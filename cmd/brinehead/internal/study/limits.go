@@ -115,7 +115,7 @@ func noNPSH(c *Condition, i int) string {
 
 // Defaults of common practice, judged where limits.csv names no limit of the kind.
 const (
-	practice        = "default, common practice"
+	practice        = "common practice"
 	defaultVelocity = 3.0 // m/s
 	leastShare      = 70.0
 	greatestShare   = 120.0
@@ -133,7 +133,7 @@ var defaultSources = map[string]string{
 // limits are the limits of a job, its own and the defaults.
 type limits struct {
 	list     []limit
-	defaults []string // kinds judged by default
+	defaults []Default
 }
 
 func newLimits(j *job.Job) *limits {
@@ -146,7 +146,7 @@ func newLimits(j *job.Job) *limits {
 			}
 			named[k.name] = true
 			l.list = append(l.list, limit{name: k.name, on: row.On.Value, value: row.Value.Value * k.scale, condition: row.Condition.Value,
-				source: fmt.Sprintf("%s, line %d", row.Limit.File, row.Limit.Line)})
+				source: fmt.Sprintf("limits.csv, line %d", row.Limit.Line)})
 		}
 	}
 	for _, k := range limitKinds {
@@ -154,18 +154,16 @@ func newLimits(j *job.Job) *limits {
 		if named[k.name] || !has {
 			continue
 		}
-		l.defaults = append(l.defaults, k.name)
+		l.defaults = append(l.defaults, Default{k.name, source})
 		l.list = append(l.list, limit{name: k.name, on: "*", value: math.NaN(), source: source, byDefault: true})
 	}
 	return l
 }
 
-// notes says which limits come from defaults.
-func (l *limits) notes() []string {
-	if len(l.defaults) == 0 {
-		return nil
-	}
-	return []string{"judged by default, since limits.csv names none of the kind: " + strings.Join(l.defaults, ", ")}
+// Default is a limit judged by default, with where its figure comes from.
+type Default struct {
+	Limit  string `json:"limit"`
+	Source string `json:"source"`
 }
 
 // judge judges every limit in a condition. A condition without a solution has every limit not judged.
@@ -294,7 +292,18 @@ func (f Finding) Worded(value, limitValue float64, unit string) string {
 	for digits < 8 && value != limitValue && short(value, digits) == short(limitValue, digits) {
 		digits++
 	}
+	if unit == "-" {
+		return fmt.Sprintf("%s, want %s %s", short(value, digits), word, short(limitValue, digits))
+	}
 	return fmt.Sprintf("%s %s, want %s %s", short(value, digits), unit, word, short(limitValue, digits))
+}
+
+// Origin says in a word where the limit comes from: its row, or default.
+func (f Finding) Origin() string {
+	if strings.HasPrefix(f.Source, "limits.csv") {
+		return f.Source
+	}
+	return "default"
 }
 
 // defaultValue returns the default of a limit for a pump or a run, in the unit of findings.

@@ -1,0 +1,131 @@
+package job
+
+import (
+	"fmt"
+	"math"
+	"strings"
+)
+
+// Quantity is a kind of number, with the units the trade uses for it.
+type Quantity struct {
+	Name  string
+	Units []Unit // the first is the one messages and starter tables prefer; none for a plain number
+}
+
+// Unit is a unit of a quantity: SI = Factor value + Offset.
+type Unit struct {
+	Name           string
+	Aliases        []string
+	Factor, Offset float64
+}
+
+// ToSI turns a value in the unit into SI (or the program's own unit; see the package comment).
+func (u Unit) ToSI(value float64) float64 { return u.Factor*value + u.Offset }
+
+// FromSI turns it back.
+func (u Unit) FromSI(si float64) float64 { return (si - u.Offset) / u.Factor }
+
+// Conversion factors, exact by definition unless a comment says otherwise.
+const (
+	inch             = 0.0254
+	foot             = 12 * inch
+	usGallon         = 231 * inch * inch * inch
+	imperialGallon   = 4.54609e-3
+	pound            = 0.45359237
+	standardGravity  = 9.80665
+	psi              = pound * standardGravity / (inch * inch)
+	metreOfWater     = 1000 * standardGravity // conventional: water of 1000 kg/m3
+	millimetreOfHg   = 133.322387415          // conventional (ISO 80000-4, from memory)
+	horsePower       = 550 * foot * pound * standardGravity
+	metricHorsePower = 75 * standardGravity
+)
+
+// Quantities of the tables. A speed is kept in rpm, a salinity in g/kg, a temperature in Celsius, a flow coefficient Kv
+// in m3/h at 1 bar, a share as a fraction.
+var (
+	length      = Quantity{"length", []Unit{{"m", nil, 1, 0}, {"mm", nil, 1e-3, 0}, {"cm", nil, 1e-2, 0}, {"ft", []string{"feet"}, foot, 0}, {"in", []string{"inch", `"`}, inch, 0}}}
+	flow        = Quantity{"flow", []Unit{{"m3/h", []string{"m³/h", "m3/hr", "m³/hr", "cbm/h", "cum/h", "m^3/h"}, 1.0 / 3600, 0}, {"l/s", nil, 1e-3, 0}, {"l/min", nil, 1e-3 / 60, 0}, {"m3/s", []string{"m³/s", "m^3/s"}, 1, 0}, {"gpm (US)", []string{"gpm", "us gpm", "usgpm"}, usGallon / 60, 0}, {"gpm (UK)", []string{"uk gpm", "igpm"}, imperialGallon / 60, 0}}}
+	pressure    = Quantity{"pressure", []Unit{{"bar", []string{"barg", "bar g"}, 1e5, 0}, {"mbar", nil, 100, 0}, {"kPa", nil, 1e3, 0}, {"MPa", nil, 1e6, 0}, {"Pa", nil, 1, 0}, {"psi", []string{"psig"}, psi, 0}, {"mH2O", []string{"mwc", "mh₂o"}, metreOfWater, 0}, {"mmHg", nil, millimetreOfHg, 0}}}
+	power       = Quantity{"power", []Unit{{"kW", nil, 1e3, 0}, {"W", nil, 1, 0}, {"MW", nil, 1e6, 0}, {"hp", []string{"bhp"}, horsePower, 0}, {"PS", nil, metricHorsePower, 0}}}
+	temperature = Quantity{"temperature", []Unit{{"degC", []string{"°c", "c", "deg c", "celsius"}, 1, 0}, {"K", []string{"kelvin"}, 1, -273.15}, {"degF", []string{"°f", "f", "deg f", "fahrenheit"}, 1 / 1.8, -32 / 1.8}}}
+	speed       = Quantity{"speed", []Unit{{"rpm", []string{"1/min", "r/min", "min-1"}, 1, 0}}}
+	share       = Quantity{"share", []Unit{{"%", []string{"percent"}, 0.01, 0}, {"-", nil, 1, 0}}}
+	velocity    = Quantity{"velocity", []Unit{{"m/s", nil, 1, 0}, {"ft/s", []string{"fps"}, foot, 0}}}
+	capacity    = Quantity{"flow coefficient Kv", []Unit{{"m3/h", []string{"m³/h", "m3/hr", "m³/hr"}, 1, 0}}}
+	salinity    = Quantity{"salinity", []Unit{{"g/kg", nil, 1, 0}}}
+	density     = Quantity{"density", []Unit{{"kg/m3", []string{"kg/m³"}, 1, 0}}}
+	current     = Quantity{"current", []Unit{{"A", nil, 1, 0}}}
+	ratio       = Quantity{"ratio", []Unit{{"-", []string{""}, 1, 0}}}
+	plain       = Quantity{"number", nil}
+	words       = Quantity{"text", nil}
+)
+
+// unit finds a unit of the quantity by its name or alias, whatever the case where that tells no two apart.
+func (q Quantity) unit(name string) (Unit, bool) {
+	name = strings.Join(strings.Fields(name), " ")
+	for _, u := range q.Units {
+		if u.Name == name {
+			return u, true
+		}
+	}
+	for _, u := range q.Units {
+		if strings.EqualFold(u.Name, name) && !strings.EqualFold(name, "mpa") {
+			return u, true
+		}
+		for _, a := range u.Aliases {
+			if strings.EqualFold(a, name) {
+				return u, true
+			}
+		}
+	}
+	return Unit{}, false
+}
+
+// names lists the units for messages.
+func (q Quantity) names() string {
+	var names []string
+	for _, u := range q.Units {
+		names = append(names, u.Name)
+	}
+	return strings.Join(names, ", ")
+}
+
+// interval is a range of SI values with open or closed ends.
+type interval struct {
+	low, high         float64
+	lowOpen, highOpen bool
+}
+
+func (i interval) holds(x float64) bool {
+	return (x > i.low || !i.lowOpen && x == i.low) && (x < i.high || !i.highOpen && x == i.high)
+}
+
+// words says the interval in a unit: "more than 0, at most 5000".
+func (i interval) words(u Unit) string {
+	var parts []string
+	number := func(si float64) string { return fmt.Sprintf("%.6g", u.FromSI(si)) }
+	if !math.IsInf(i.low, 0) {
+		word := "at least "
+		if i.lowOpen {
+			word = "more than "
+		}
+		parts = append(parts, word+number(i.low))
+	}
+	if !math.IsInf(i.high, 0) {
+		word := "at most "
+		if i.highOpen {
+			word = "less than "
+		}
+		parts = append(parts, word+number(i.high))
+	}
+	if parts == nil {
+		return "a number"
+	}
+	return strings.Join(parts, ", ")
+}
+
+func between(low, high float64) interval { return interval{low: low, high: high} }
+func above(low, high float64) interval   { return interval{low: low, high: high, lowOpen: true} }
+func below(low, high float64) interval   { return interval{low: low, high: high, highOpen: true} }
+
+var anyNumber = between(math.Inf(-1), math.Inf(1))

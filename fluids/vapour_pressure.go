@@ -1,0 +1,87 @@
+package fluids
+
+import "math"
+
+// Ends of the saturation line of IAPWS R7-97(2012).
+const (
+	saturationLowestKelvin  = 273.15
+	saturationHighestKelvin = criticalKelvin
+	saturationLowestPascal  = 611.213 // table 35's equation at 273.15 K, as section 8.2 of the release rounds it
+	saturationHighestPascal = 22.064e6
+)
+
+// VapourPressure returns the pressure in Pa at which water at a temperature in K boils.
+//
+// Source: IAPWS R7-97(2012), eq. 30 and table 34.
+// Range: 273.15 to 647.096 K; outside it, or for NaN, a [*RangeError].
+func VapourPressure(kelvin float64) (pascal float64, err error) {
+	if !(saturationLowestKelvin <= kelvin && kelvin <= saturationHighestKelvin) {
+		return math.NaN(), &RangeError{"IAPWS-IF97 equation 30", "temperature", "K", kelvin, saturationLowestKelvin, saturationHighestKelvin}
+	}
+	return saturation(kelvin), nil
+}
+
+// BoilingTemperature returns the temperature in K at which water boils under an absolute pressure in Pa.
+//
+// Source: IAPWS R7-97(2012), eq. 31 and table 34.
+// Range: 611.213 Pa to 22.064 MPa; outside it, or for NaN, a [*RangeError].
+func BoilingTemperature(pascal float64) (kelvin float64, err error) {
+	if !(saturationLowestPascal <= pascal && pascal <= saturationHighestPascal) {
+		return math.NaN(), &RangeError{"IAPWS-IF97 equation 31", "pressure", "Pa", pascal, saturationLowestPascal, saturationHighestPascal}
+	}
+	beta := math.Sqrt(math.Sqrt(pascal / 1e6)) // eq. 29a
+	e := beta*(beta+n3) + n6
+	f := beta*(n1*beta+n4) + n7
+	g := beta*(n2*beta+n5) + n8
+	d := 2 * g / (-f - math.Sqrt(f*f-4*e*g))
+	sum := n10 + d
+	return (sum - math.Sqrt(sum*sum-4*(n9+n10*d))) / 2, nil // eq. 31
+}
+
+// saturation is [VapourPressure] without its range.
+func saturation(kelvin float64) float64 {
+	theta := kelvin + n9/(kelvin-n10) // eq. 29b
+	a := theta*(theta+n1) + n2
+	b := theta*(n3*theta+n4) + n5
+	c := theta*(n6*theta+n7) + n8
+	beta := 2 * c / (-b + math.Sqrt(b*b-4*a*c))
+	square := beta * beta
+	return 1e6 * square * square // eq. 30
+}
+
+// Coefficients of IAPWS R7-97(2012), table 34.
+const (
+	n1  = 1167.0521452767
+	n2  = -724213.16703206
+	n3  = -17.073846940092
+	n4  = 12020.82470247
+	n5  = -3232555.0322333
+	n6  = 14.91510861353
+	n7  = -4823.2657361591
+	n8  = 405113.40542057
+	n9  = -0.23855557567849
+	n10 = 650.17534844798
+)
+
+// SeaVapourPressure returns the pressure in Pa at which sea water at a temperature in K and an absolute salinity in
+// g/kg boils: there water has the same chemical potential in the sea water as in its steam.
+//
+// Salt lowers that potential by [Saline.WaterPotential], steam as an ideal gas follows with its pressure:
+//
+//	ln(p/p0) = potential/(R T),   p0 from eq. 30 of IAPWS-IF97
+//
+// Source: the boiling equation of IAPWS Advisory Note 5, eq. 7, solved for pressure.
+// Range: 271.15 to 353.15 K, 0 to 45 g/kg; outside it, or for NaN, a [*RangeError].
+func SeaVapourPressure(kelvin, salinity float64) (float64, error) {
+	if err := seaRange("sea water vapour pressure", kelvin-zeroCelsius, salinity); err != nil {
+		return math.NaN(), err
+	}
+	return seaVapourPressure(kelvin, salinity), nil
+}
+
+func seaVapourPressure(kelvin, salinity float64) float64 {
+	potential := saline(kelvin, StandardAtmosphere, salinity).WaterPotential
+	return saturation(kelvin) * math.Exp(potential/(steamGasConstant*kelvin))
+}
+
+const steamGasConstant = 461.526 // J/(kg K), IAPWS R7-97(2012) eq. 1

@@ -67,7 +67,7 @@ func summary(a *study.Check) []string {
 	case count[study.NotJudged] > 0:
 		verdict = fmt.Sprintf("NOT JUDGED: %d of %d limits", count[study.NotJudged], total)
 	}
-	return []string{verdict, fmt.Sprintf("%s: %s, %d limits judged, %d met", a.Job, counted(len(a.Conditions), "condition"), total-count[study.NotJudged], count[study.Met])}
+	return []string{verdict, fmt.Sprintf("%s: %s, %s judged, %d met", a.Job, counted(len(a.Conditions), "condition"), counted(total-count[study.NotJudged], "limit"), count[study.Met])}
 }
 
 func counted(n int, what string) string {

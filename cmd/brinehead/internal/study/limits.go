@@ -50,34 +50,35 @@ type limitKind struct {
 	unit  string
 	scale float64 // unit of findings over the SI unit of the table
 	least bool
+	still bool     // judged from the condition alone, without a solution
 	on    []string // pumps, runs, points, seas, tags; what * stands for is the first
 	value func(c *Condition, kind string, index int) (value Figure, why string)
 }
 
 // limitKinds is the list of every limit that can be judged.
 var limitKinds = []limitKind{
-	{"minimum flow", "m3/h", 3600, true, []string{"pumps", "runs", "tags"}, flowOf},
-	{"maximum flow", "m3/h", 3600, false, []string{"pumps", "runs", "tags"}, flowOf},
-	{"NPSH margin", "m", 1, true, []string{"pumps"}, func(c *Condition, _ string, i int) (Figure, string) {
+	{"minimum flow", "m3/h", 3600, true, false, []string{"pumps", "runs", "tags"}, flowOf},
+	{"maximum flow", "m3/h", 3600, false, false, []string{"pumps", "runs", "tags"}, flowOf},
+	{"NPSH margin", "m", 1, true, false, []string{"pumps"}, func(c *Condition, _ string, i int) (Figure, string) {
 		return c.Pumps[i].NPSHMargin, noNPSH(c, i)
 	}},
-	{"NPSH ratio", "-", 1, true, []string{"pumps"}, func(c *Condition, _ string, i int) (Figure, string) {
+	{"NPSH ratio", "-", 1, true, false, []string{"pumps"}, func(c *Condition, _ string, i int) (Figure, string) {
 		return c.Pumps[i].NPSHAvailable / c.Pumps[i].NPSHRequired, noNPSH(c, i)
 	}},
-	{"maximum velocity", "m/s", 1, false, []string{"runs"}, velocityOf},
-	{"minimum velocity", "m/s", 1, true, []string{"runs"}, velocityOf},
-	{"maximum shaft power", "kW", 1e-3, false, []string{"pumps"}, func(c *Condition, _ string, i int) (Figure, string) {
+	{"maximum velocity", "m/s", 1, false, false, []string{"runs"}, velocityOf},
+	{"minimum velocity", "m/s", 1, true, false, []string{"runs"}, velocityOf},
+	{"maximum shaft power", "kW", 1e-3, false, false, []string{"pumps"}, func(c *Condition, _ string, i int) (Figure, string) {
 		return c.Pumps[i].ShaftPower, "the pump sheet gives neither efficiency nor power at this flow"
 	}},
-	{"least share of best-efficiency flow", "%", 100, true, []string{"pumps"}, shareOf},
-	{"greatest share of best-efficiency flow", "%", 100, false, []string{"pumps"}, shareOf},
-	{"minimum pressure", "bar", 1e-5, true, []string{"points"}, func(c *Condition, _ string, i int) (Figure, string) {
+	{"least share of best-efficiency flow", "%", 100, true, false, []string{"pumps"}, shareOf},
+	{"greatest share of best-efficiency flow", "%", 100, false, false, []string{"pumps"}, shareOf},
+	{"minimum pressure", "bar", 1e-5, true, false, []string{"points"}, func(c *Condition, _ string, i int) (Figure, string) {
 		return c.Points[i].GaugePressure, "the point is cut off by shut runs"
 	}},
-	{"minimum immersion", "m", 1, true, []string{"seas"}, func(c *Condition, _ string, i int) (Figure, string) {
+	{"minimum immersion", "m", 1, true, true, []string{"seas"}, func(c *Condition, _ string, i int) (Figure, string) {
 		return c.Draught - Figure(c.elevations[i]), "the condition gives no draught"
 	}},
-	{"maximum outlet temperature", "degC", 1, false, []string{"tags"}, func(c *Condition, _ string, i int) (Figure, string) {
+	{"maximum outlet temperature", "degC", 1, false, false, []string{"tags"}, func(c *Condition, _ string, i int) (Figure, string) {
 		return c.Fittings[i].Outlet, "no heat [kW] is given for it, or no water flows"
 	}},
 }
@@ -256,7 +257,7 @@ func (k limitKind) finding(c *Condition, plant *curves.Plant, lim limit, kind st
 			return f, false // no motor rating: nothing to hold the power against
 		}
 	}
-	if failure != nil {
+	if failure != nil && !k.still {
 		f.Reason = reasonOf(failure)
 		return f, true
 	}

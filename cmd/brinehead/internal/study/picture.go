@@ -2,6 +2,7 @@ package study
 
 import (
 	"math"
+	"strconv"
 	"strings"
 
 	"brinehead/curves"
@@ -136,7 +137,7 @@ func (c *Condition) bounds(u curves.Pump) []Bound {
 		case "least share of best-efficiency flow", "greatest share of best-efficiency flow":
 			if best := u.BestEfficiencyFlow(); !math.IsNaN(best) {
 				least := strings.HasPrefix(f.Limit, "least")
-				list = append(list, Bound{short(float64(f.LimitValue), 3) + " % of best", float64(f.LimitValue) / 100 * best, least})
+				list = append(list, Bound{strconv.FormatFloat(float64(f.LimitValue), 'g', 4, 64) + " % of best", float64(f.LimitValue) / 100 * best, least})
 			}
 		}
 	}

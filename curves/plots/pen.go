@@ -1,0 +1,204 @@
+package plots
+
+import (
+	"image/color"
+	"math"
+
+	"gonum.org/v1/plot/text"
+	"gonum.org/v1/plot/vg"
+	"gonum.org/v1/plot/vg/draw"
+)
+
+const labelSize = vg.Length(9) // points
+
+// pen draws within the axes and remembers what it has drawn, so that labels can keep clear of it.
+type pen struct {
+	canvas draw.Canvas
+	x, y   func(float64) vg.Length
+
+	ink   []vg.Point     // points along what is drawn, close together
+	boxes []vg.Rectangle // labels and marks
+}
+
+// stroke draws a line where it lies within the frame, or rings at its points.
+func (p *pen) stroke(s stroke) {
+	if s.rings {
+		ring := draw.GlyphStyle{Color: s.colour, Radius: vg.Points(2.4), Shape: draw.RingGlyph{}}
+		for _, xy := range s.points {
+			if at := (vg.Point{X: p.x(xy.X), Y: p.y(xy.Y)}); finite(xy.X) && finite(xy.Y) && p.canvas.Contains(at) {
+				p.canvas.DrawGlyph(ring, at)
+			}
+		}
+		return
+	}
+	var part []vg.Point
+	flush := func() {
+		if len(part) > 1 {
+			for _, piece := range p.canvas.ClipLinesXY(part) {
+				p.canvas.StrokeLines(s.weight.style(s.colour), piece)
+				p.remember(piece)
+			}
+		}
+		part = nil
+	}
+	for _, xy := range s.points {
+		if !finite(xy.X) || !finite(xy.Y) {
+			flush()
+			continue
+		}
+		part = append(part, vg.Point{X: p.x(xy.X), Y: p.y(xy.Y)})
+	}
+	flush()
+}
+
+// remember notes points two points (of the printer) apart along a drawn line.
+func (p *pen) remember(line []vg.Point) {
+	for i := 1; i < len(line); i++ {
+		a, b := line[i-1], line[i]
+		steps := max(1, int(math.Hypot(float64(b.X-a.X), float64(b.Y-a.Y))/2))
+		for k := range steps + 1 {
+			t := vg.Length(k) / vg.Length(steps)
+			p.ink = append(p.ink, vg.Point{X: a.X + t*(b.X-a.X), Y: a.Y + t*(b.Y-a.Y)})
+		}
+	}
+}
+
+// bound draws a limit: a line with short hatches on the forbidden side.
+func (p *pen) bound(b Bound) {
+	x := p.x(b.Flow)
+	if x < p.canvas.Min.X || x > p.canvas.Max.X {
+		return
+	}
+	style := draw.LineStyle{Color: boundColour, Width: vg.Points(0.8)}
+	bottom, top := vg.Point{X: x, Y: p.canvas.Min.Y}, vg.Point{X: x, Y: p.canvas.Max.Y}
+	p.canvas.StrokeLine2(style, bottom.X, bottom.Y, top.X, top.Y)
+	side := vg.Points(4) // hatches to the right of a greatest flow
+	if b.Least {
+		side = -side
+	}
+	style.Width = vg.Points(0.5)
+	for y := bottom.Y; y+vg.Points(4) <= top.Y; y += vg.Points(5) {
+		p.canvas.StrokeLine2(style, x, y, x+side, y+vg.Points(4))
+	}
+	p.remember([]vg.Point{bottom, top})
+}
+
+// boundName writes a limit's name upright along its line, on the free side, where it hides least.
+func (p *pen) boundName(b Bound) {
+	x := p.x(b.Flow)
+	if x < p.canvas.Min.X || x > p.canvas.Max.X {
+		return
+	}
+	name := writing(labelSize - 1)
+	name.Color, name.Rotation, name.XAlign, name.YAlign = boundColour, math.Pi/2, text.XLeft, text.YTop
+	width, height := name.Width(b.Name), name.Height(b.Name)
+	left := x + vg.Points(2)
+	if !b.Least {
+		left = x - vg.Points(2) - height
+	}
+	var best vg.Rectangle
+	bestCost := math.Inf(1)
+	for y := p.canvas.Min.Y + vg.Points(4); y+width < p.canvas.Max.Y; y += vg.Points(6) {
+		box := vg.Rectangle{Min: vg.Point{X: left, Y: y}, Max: vg.Point{X: left + height, Y: y + width}}
+		if cost := p.cost(box) + 0.01*float64(y-p.canvas.Min.Y); cost < bestCost {
+			best, bestCost = box, cost
+		}
+	}
+	if math.IsInf(bestCost, 1) {
+		return // a name longer than the frame is high
+	}
+	p.canvas.FillText(name, best.Min, b.Name)
+	p.boxes = append(p.boxes, best)
+}
+
+// bracket draws a difference: a line between two short bars.
+func (p *pen) bracket(b bracket) {
+	x, low, high := p.x(b.x), p.y(b.low), p.y(b.high)
+	style := draw.LineStyle{Color: inkColour, Width: vg.Points(0.9)}
+	bar := vg.Points(3)
+	p.canvas.StrokeLine2(style, x, low, x, high)
+	p.canvas.StrokeLine2(style, x-bar, low, x+bar, low)
+	p.canvas.StrokeLine2(style, x-bar, high, x+bar, high)
+	p.remember([]vg.Point{{X: x, Y: low}, {X: x, Y: high}})
+}
+
+// mark draws an operating point.
+func (p *pen) mark(m Mark) {
+	at := vg.Point{X: p.x(m.Flow), Y: p.y(m.Value)}
+	p.canvas.DrawGlyph(draw.GlyphStyle{Color: inkColour, Radius: vg.Points(3.4), Shape: draw.CircleGlyph{}}, at)
+	r := vg.Points(5)
+	p.boxes = append(p.boxes, vg.Rectangle{Min: vg.Point{X: at.X - r, Y: at.Y - r}, Max: vg.Point{X: at.X + r, Y: at.Y + r}})
+}
+
+// labelAt writes a label near a point: of the places round it the one that is clearest, the nearer of equals.
+func (p *pen) labelAt(label string, at vg.Point, c color.Color) {
+	var places []vg.Point
+	style := writing(labelSize)
+	w, h := style.Width(label), style.Height(label)
+	for _, far := range []vg.Length{7, 14, 22, 32} {
+		d := vg.Points(float64(far))
+		for _, corner := range []vg.Point{
+			{X: at.X + d, Y: at.Y + d/2}, {X: at.X + d, Y: at.Y - h - d/2}, {X: at.X - w - d, Y: at.Y - h - d/2}, {X: at.X - w - d, Y: at.Y + d/2},
+			{X: at.X + d, Y: at.Y - h/2}, {X: at.X - w - d, Y: at.Y - h/2}, {X: at.X - w/2, Y: at.Y + d}, {X: at.X - w/2, Y: at.Y - h - d},
+		} {
+			places = append(places, corner)
+		}
+	}
+	p.write(label, style, places, c)
+}
+
+// labelAlong writes a line's name beside it, as near its right end as there is room.
+func (p *pen) labelAlong(s stroke) {
+	style := writing(labelSize)
+	w, h := style.Width(s.name), style.Height(s.name)
+	var places []vg.Point
+	for k := len(s.points) - 1; k >= 0; k -= max(1, len(s.points)/24) {
+		if !finite(s.points[k].X) || !finite(s.points[k].Y) {
+			continue
+		}
+		at := vg.Point{X: p.x(s.points[k].X), Y: p.y(s.points[k].Y)}
+		gap := vg.Points(4)
+		places = append(places, vg.Point{X: at.X - w/2, Y: at.Y + gap}, vg.Point{X: at.X - w/2, Y: at.Y - h - gap},
+			vg.Point{X: at.X - w - gap, Y: at.Y - h - gap}, vg.Point{X: at.X - w - gap, Y: at.Y + gap}, vg.Point{X: at.X + gap, Y: at.Y + gap}, vg.Point{X: at.X + gap, Y: at.Y - h - gap})
+	}
+	p.write(s.name, style, places, s.colour)
+}
+
+// write puts a label at the best of the places, each the lower left corner of its box.
+func (p *pen) write(label string, style text.Style, places []vg.Point, c color.Color) {
+	if label == "" || len(places) == 0 {
+		return
+	}
+	w, h := style.Width(label), style.Height(label)
+	var best vg.Rectangle
+	bestCost := math.Inf(1)
+	for i, at := range places {
+		box := vg.Rectangle{Min: at, Max: vg.Point{X: at.X + w, Y: at.Y + h}}
+		if cost := p.cost(box) + float64(i)*0.02; cost < bestCost {
+			best, bestCost = box, cost
+		}
+	}
+	style.Color, style.XAlign, style.YAlign = c, text.XLeft, text.YBottom
+	p.canvas.FillText(style, best.Min, label)
+	p.boxes = append(p.boxes, best)
+}
+
+// cost says how much a label in a box would hide, or how far it would leave the frame.
+func (p *pen) cost(box vg.Rectangle) float64 {
+	cost := 0.0
+	frame := p.canvas.Rectangle
+	if box.Min.X < frame.Min.X+2 || box.Max.X > frame.Max.X-2 || box.Min.Y < frame.Min.Y+2 || box.Max.Y > frame.Max.Y-2 {
+		cost += 1000
+	}
+	for _, other := range p.boxes {
+		if box.Min.X < other.Max.X+2 && other.Min.X < box.Max.X+2 && box.Min.Y < other.Max.Y+1 && other.Min.Y < box.Max.Y+1 {
+			cost += 200
+		}
+	}
+	for _, at := range p.ink {
+		if box.Min.X-1 < at.X && at.X < box.Max.X+1 && box.Min.Y-1 < at.Y && at.Y < box.Max.Y+1 {
+			cost++
+		}
+	}
+	return cost
+}

@@ -137,12 +137,11 @@ func (p *pen) labelAt(label string, at vg.Point, c color.Color) {
 	w, h := style.Width(label), style.Height(label)
 	for _, far := range []vg.Length{7, 14, 22, 32} {
 		d := vg.Points(float64(far))
-		for _, corner := range []vg.Point{
-			{X: at.X + d, Y: at.Y + d/2}, {X: at.X + d, Y: at.Y - h - d/2}, {X: at.X - w - d, Y: at.Y - h - d/2}, {X: at.X - w - d, Y: at.Y + d/2},
-			{X: at.X + d, Y: at.Y - h/2}, {X: at.X - w - d, Y: at.Y - h/2}, {X: at.X - w/2, Y: at.Y + d}, {X: at.X - w/2, Y: at.Y - h - d},
-		} {
-			places = append(places, corner)
-		}
+		places = append(places,
+			vg.Point{X: at.X + d, Y: at.Y + d/2}, vg.Point{X: at.X + d, Y: at.Y - h - d/2},
+			vg.Point{X: at.X - w - d, Y: at.Y - h - d/2}, vg.Point{X: at.X - w - d, Y: at.Y + d/2},
+			vg.Point{X: at.X + d, Y: at.Y - h/2}, vg.Point{X: at.X - w - d, Y: at.Y - h/2},
+			vg.Point{X: at.X - w/2, Y: at.Y + d}, vg.Point{X: at.X - w/2, Y: at.Y - h - d})
 	}
 	p.write(label, style, places, c)
 }

@@ -111,12 +111,13 @@ func liquidWater(kelvin, pascal float64) Liquid {
 	}
 }
 
-// fillPowers sets powers[n] to x to the n.
+// fillPowers sets powers[n] to x to the n; there are at least two. Even and odd powers go side by side, so that
+// a product need not wait for the one before it.
 func fillPowers(powers []float64, x float64) {
-	power := 1.0
-	for n := range powers {
-		powers[n] = power
-		power *= x
+	powers[0], powers[1] = 1, x
+	square := x * x
+	for n := 2; n < len(powers); n++ {
+		powers[n] = powers[n-2] * square
 	}
 }
 

@@ -78,6 +78,10 @@ func Saline(kelvin, absolutePascal, salinity float64) (Salt, error) {
 	return saline(kelvin, absolutePascal, salinity), nil
 }
 
+// saline is [Saline] without its range. Each row of the table is a polynomial in xi, the square root of the
+// salinity; its value serves volume and heat capacity. What g - S dg/dS, the potential of the water, keeps of a
+// polynomial p is -(xi/2) dp/dxi + p, as S goes with xi squared: with p = xi2 v that is -(xi3/2) dv/dxi, and of the
+// logarithmic terms xi2 ln(xi) it is -xi2/2, which has a limit at no salt.
 func saline(kelvin, pascal, salinity float64) Salt {
 	const (
 		salinityScale = StandardSalinity * 40 / 35 // g/kg, table 1
@@ -87,103 +91,70 @@ func saline(kelvin, pascal, salinity float64) Salt {
 	square := salinity / salinityScale
 	xi, tau, pi := math.Sqrt(square), (kelvin-zeroCelsius)/kelvinScale, (pascal-StandardAtmosphere)/pascalScale
 
-	var xiPower [8]float64
-	fillPowers(xiPower[:], xi)
-	xiPower[1] = square // the terms i = 1 are xi2 ln(xi): what differentiation leaves of them is in potentialShare
-	// tauPower[j+2] and piPower[k+1] hold the powers; those below the power 0 are met only with the factor 0.
+	// tauPower[j+2] and piPower[k+1] are the powers; what stands before the power 0 meets only the factor 0.
 	var tauPower [9]float64
 	fillPowers(tauPower[2:], tau)
 	var piPower [7]float64
 	fillPowers(piPower[1:], pi)
 
-	var volume, curvature, potential float64
+	var volume, curvature float64
+	potential := salineLog[0] + salineLog[1]*tau
 	for n := range salineTerms {
-		term := &salineTerms[n]
-		j, k := float64(term.j), float64(term.k)
-		value := term.g * xiPower[term.i]
-		atTau, atPi := value*tauPower[term.j+2], piPower[term.k+1]
-		volume += k * atTau * piPower[term.k]
-		curvature += j * (j - 1) * value * tauPower[term.j] * atPi
-		potential += potentialShare[term.i] * atTau * atPi
+		row := &salineTerms[n]
+		value, slope := 0.0, 0.0
+		for m := len(row.g) - 1; m >= 0; m-- { // Horner's rule for the polynomial and its derivative
+			slope = slope*xi + value
+			value = value*xi + row.g[m]
+		}
+		j, k := float64(row.j), float64(row.k)
+		atTau, atPi := tauPower[row.j+2], piPower[row.k+1]
+		volume += k * value * atTau * piPower[row.k]              // eq. 4, differentiated by pi
+		curvature += j * (j - 1) * value * tauPower[row.j] * atPi // eq. 4, twice by tau
+		potential += xi * slope * atTau * atPi
 	}
 	return Salt{
-		Volume:         volume / pascalScale,
-		HeatCapacity:   -kelvin * curvature / (kelvinScale * kelvinScale),
-		WaterPotential: potential,
+		Volume:         square * volume / pascalScale,
+		HeatCapacity:   -kelvin * square * curvature / (kelvinScale * kelvinScale),
+		WaterPotential: -square / 2 * potential,
 	}
 }
 
-// potentialShare is what g - S dg/dS keeps of a term in xi to the i: 1 - i/2, as S goes with xi squared; of the
-// term xi2 ln(xi), counted as i = 1, it keeps -xi2/2.
-var potentialShare = [8]float64{1, -0.5, 0, -0.5, -1, -1.5, -2, -2.5}
+// salineLog are the coefficients of IAPWS R13-08, table 2, with i = 1 and k = 0, for j = 0 and 1: g in J/kg.
+var salineLog = [2]float64{5812.81456626732, 851.226734946706}
 
-// salineTerms are exponents and coefficients of IAPWS R13-08, table 2: g in J/kg.
+// salineTerms are the other coefficients of IAPWS R13-08, table 2, in J/kg: those of one j and k in a row, for
+// i = 2, 3 and so on.
 var salineTerms = [...]struct {
-	i, j, k int
-	g       float64
+	j, k int
+	g    []float64
 }{
-	{1, 0, 0, 5812.81456626732},
-	{2, 0, 0, 1416.27648484197},
-	{3, 0, 0, -2432.14662381794},
-	{4, 0, 0, 2025.80115603697},
-	{5, 0, 0, -1091.66841042967},
-	{6, 0, 0, 374.60123787784},
-	{7, 0, 0, -48.5891069025409},
-	{1, 1, 0, 851.226734946706},
-	{2, 1, 0, 168.072408311545},
-	{3, 1, 0, -493.407510141682},
-	{4, 1, 0, 543.835333000098},
-	{5, 1, 0, -196.028306689776},
-	{6, 1, 0, 36.7571622995805},
-	{2, 2, 0, 880.031352997204},
-	{3, 2, 0, -43.0664675978042},
-	{4, 2, 0, -68.5572509204491},
-	{2, 3, 0, -225.267649263401},
-	{3, 3, 0, -10.0227370861875},
-	{4, 3, 0, 49.3667694856254},
-	{2, 4, 0, 91.4260447751259},
-	{3, 4, 0, 0.875600661808945},
-	{4, 4, 0, -17.1397577419788},
-	{2, 5, 0, -21.6603240875311},
-	{4, 5, 0, 2.49697009569508},
-	{2, 6, 0, 2.13016970847183},
-	{2, 0, 1, -3310.49154044839},
-	{3, 0, 1, 199.459603073901},
-	{4, 0, 1, -54.7919133532887},
-	{5, 0, 1, 36.0284195611086},
-	{2, 1, 1, 729.116529735046},
-	{3, 1, 1, -175.292041186547},
-	{4, 1, 1, -22.6683558512829},
-	{2, 2, 1, -860.764303783977},
-	{3, 2, 1, 383.058066002476},
-	{2, 3, 1, 694.244814133268},
-	{3, 3, 1, -460.319931801257},
-	{2, 4, 1, -297.728741987187},
-	{3, 4, 1, 234.565187611355},
-	{2, 0, 2, 384.794152978599},
-	{3, 0, 2, -52.2940909281335},
-	{4, 0, 2, -4.08193978912261},
-	{2, 1, 2, -343.956902961561},
-	{3, 1, 2, 83.1923927801819},
-	{2, 2, 2, 337.409530269367},
-	{3, 2, 2, -54.1917262517112},
-	{2, 3, 2, -204.889641964903},
-	{2, 4, 2, 74.726141138756},
-	{2, 0, 3, -96.5324320107458},
-	{3, 0, 3, 68.0444942726459},
-	{4, 0, 3, -30.1755111971161},
-	{2, 1, 3, 124.687671116248},
-	{3, 1, 3, -29.483064349429},
-	{2, 2, 3, -178.314556207638},
-	{3, 2, 3, 25.6398487389914},
-	{2, 3, 3, 113.561697840594},
-	{2, 4, 3, -36.4872919001588},
-	{2, 0, 4, 15.8408172766824},
-	{3, 0, 4, -3.41251932441282},
-	{2, 1, 4, -31.656964386073},
-	{2, 2, 4, 44.2040358308},
-	{2, 3, 4, -11.1282734326413},
-	{2, 0, 5, -2.62480156590992},
-	{2, 1, 5, 7.04658803315449},
-	{2, 2, 5, -7.92001547211682},
+	{0, 0, []float64{1416.27648484197, -2432.14662381794, 2025.80115603697, -1091.66841042967, 374.60123787784, -48.5891069025409}},
+	{1, 0, []float64{168.072408311545, -493.407510141682, 543.835333000098, -196.028306689776, 36.7571622995805}},
+	{2, 0, []float64{880.031352997204, -43.0664675978042, -68.5572509204491}},
+	{3, 0, []float64{-225.267649263401, -10.0227370861875, 49.3667694856254}},
+	{4, 0, []float64{91.4260447751259, 0.875600661808945, -17.1397577419788}},
+	{5, 0, []float64{-21.6603240875311, 0, 2.49697009569508}},
+	{6, 0, []float64{2.13016970847183}},
+	{0, 1, []float64{-3310.49154044839, 199.459603073901, -54.7919133532887, 36.0284195611086}},
+	{1, 1, []float64{729.116529735046, -175.292041186547, -22.6683558512829}},
+	{2, 1, []float64{-860.764303783977, 383.058066002476}},
+	{3, 1, []float64{694.244814133268, -460.319931801257}},
+	{4, 1, []float64{-297.728741987187, 234.565187611355}},
+	{0, 2, []float64{384.794152978599, -52.2940909281335, -4.08193978912261}},
+	{1, 2, []float64{-343.956902961561, 83.1923927801819}},
+	{2, 2, []float64{337.409530269367, -54.1917262517112}},
+	{3, 2, []float64{-204.889641964903}},
+	{4, 2, []float64{74.726141138756}},
+	{0, 3, []float64{-96.5324320107458, 68.0444942726459, -30.1755111971161}},
+	{1, 3, []float64{124.687671116248, -29.483064349429}},
+	{2, 3, []float64{-178.314556207638, 25.6398487389914}},
+	{3, 3, []float64{113.561697840594}},
+	{4, 3, []float64{-36.4872919001588}},
+	{0, 4, []float64{15.8408172766824, -3.41251932441282}},
+	{1, 4, []float64{-31.656964386073}},
+	{2, 4, []float64{44.2040358308}},
+	{3, 4, []float64{-11.1282734326413}},
+	{0, 5, []float64{-2.62480156590992}},
+	{1, 5, []float64{7.04658803315449}},
+	{2, 5, []float64{-7.92001547211682}},
 }

@@ -5,7 +5,8 @@ import "math"
 // Conductivity returns the thermal conductivity of water in W/(m K) at a temperature in K and a density in kg/m3.
 //
 // Source: IAPWS R15-11 (2011), eq. 15 to 17 and tables 1 and 2, without the critical enhancement of eq. 18.
-// Range: 273.15 to 1173.15 K, 0 to 1200 kg/m3; outside it, or for NaN, a [*RangeError].
+// Range: 273.15 to 1173.15 K, 0 to 1200 kg/m3; outside it, or for NaN, the result is NaN and a [*RangeError].
+// Accuracy: table 4 of the release to its nine digits.
 func Conductivity(kelvin, density float64) (float64, error) {
 	if err := transportRange("IAPWS R15-11 thermal conductivity", kelvin, density); err != nil {
 		return math.NaN(), err
@@ -30,7 +31,7 @@ var conductivityTerms = [][]float64{
 	{-2.720337, 4.57586331, -3.18369245, 1.1168348, -0.19268305, 0.012913842},
 }
 
-// Range of [SeaConductivityExcess] in temperature and pressure.
+// Range of [SeaConductivityExcess] in temperature; [Sea] begins below it.
 const (
 	seaConductivityLowestKelvin  = 273.15
 	seaConductivityHighestKelvin = 523.15
@@ -40,6 +41,9 @@ const (
 // temperature in K, an absolute pressure in Pa and an absolute salinity in g/kg.
 //
 // Source: IAPWS, Guideline on the Thermal Conductivity of Seawater (2015), eq. 1 to 5.
+// Range: 273.15 to 523.15 K, 0 to 140 MPa, 0 to 170 g/kg; outside it, or for NaN, the result is NaN and a
+// [*RangeError].
+// Accuracy: the guideline's check value to its six digits.
 func SeaConductivityExcess(kelvin, absolutePascal, salinity float64) (float64, error) {
 	const method = "sea water thermal conductivity"
 	const highestPascal, saltiest = 140e6, 170.0

@@ -18,6 +18,14 @@ const region1 = "IAPWS-IF97 region 1"
 // conductivity is [Conductivity].
 //
 // Range: 0 to 150 degC, from the vapour pressure to 2.6 MPa; outside it, or for NaN, the error is a [*RangeError].
+// Accuracy: greatest deviations from IAPWS-95, and from R12-08 and R15-11 with their critical enhancement, in
+// testdata/reference/freshwater.csv (0 to 150 degC at 101 325 Pa and 2.6 MPa):
+//
+//	density          -4 to +16 ppm; beyond 10 ppm from 45 to 90 degC, where IF97 itself departs from IAPWS-95
+//	heat capacity    -0.053 to +0.082 %
+//	vapour pressure  -0.014 to +0.001 %
+//	viscosity        -0.001 to +0.003 %
+//	conductivity     -0.001 to +0.003 %
 func Fresh(celsius, absolutePascal float64) (State, error) {
 	if !(FreshLowestCelsius <= celsius && celsius <= FreshHighestCelsius) { // so written that NaN fails
 		return State{}, &RangeError{region1, "temperature", "degC", celsius, FreshLowestCelsius, FreshHighestCelsius}
@@ -55,6 +63,7 @@ type Liquid struct {
 //
 // Source: IAPWS R7-97(2012), Industrial Formulation 1997, region 1, eq. 7 and tables 2 and 3.
 // Range: 273.15 to 623.15 K, from the vapour pressure to 100 MPa; outside it, or for NaN, a [*RangeError].
+// Accuracy: table 5 of the release to its nine digits.
 func LiquidWater(kelvin, absolutePascal float64) (Liquid, error) {
 	const low, high, highestPascal = 273.15, 623.15, 100e6
 	if !(low <= kelvin && kelvin <= high) {
@@ -91,16 +100,17 @@ func liquidWater(kelvin, pascal float64) Liquid {
 			value *= bPower[term.j]
 		}
 		gamma += value // eq. 7
-		byI += i * value
-		byII += i * (i - 1) * value
-		byJ += j * value
-		byJJ += j * (j - 1) * value
-		byIJ += i * j * value
+		timesI, timesJ := i*value, j*value
+		byI += timesI
+		byII += i * timesI
+		byJ += timesJ
+		byJJ += j * timesJ
+		byIJ += i * timesJ
 	}
-	gammaPi, gammaPiPi := -byI/a, byII/(a*a)   // table 4
-	gammaTau, gammaTauTau := byJ/b, byJJ/(b*b) // table 4
-	gammaPiTau := -byIJ / (a * b)              // table 4
-	cross := gammaPi - tau*gammaPiTau          // table 3, speed of sound
+	gammaPi, gammaPiPi := -byI/a, (byII-byI)/(a*a)   // table 4
+	gammaTau, gammaTauTau := byJ/b, (byJJ-byJ)/(b*b) // table 4
+	gammaPiTau := -byIJ / (a * b)                    // table 4
+	cross := gammaPi - tau*gammaPiTau                // table 3, speed of sound
 	soundRatio := cross*cross/(tau*tau*gammaTauTau) - gammaPiPi
 	return Liquid{ // table 3
 		Volume:       gammaPi * gasConstant * kelvin / 16.53e6,
@@ -111,13 +121,16 @@ func liquidWater(kelvin, pascal float64) Liquid {
 	}
 }
 
-// fillPowers sets powers[n] to x to the n; there are at least two. Even and odd powers go side by side, so that
-// a product need not wait for the one before it.
+// fillPowers sets powers[n] to x to the n. Even and odd powers go side by side, so that a product need not wait
+// for the one before it.
 func fillPowers(powers []float64, x float64) {
-	powers[0], powers[1] = 1, x
-	square := x * x
-	for n := 2; n < len(powers); n++ {
-		powers[n] = powers[n-2] * square
+	even, odd, square := 1.0, x, x*x
+	for len(powers) >= 2 {
+		powers[0], powers[1] = even, odd
+		even, odd, powers = even*square, odd*square, powers[2:]
+	}
+	if len(powers) == 1 {
+		powers[0] = even
 	}
 }
 

@@ -7,9 +7,8 @@ import "math"
 //
 // Source: F. J. Millero, R. Feistel, D. G. Wright and T. J. McDougall, Deep-Sea Research I 55 (2008) 50-72:
 // S_R = (35.16504/35) S_P.
-// Range: 2 to 42, where the practical scale is defined; outside it, or for NaN, a [*RangeError].
-// Accuracy: away from the ocean's proportions of salts (estuaries, the Baltic) absolute salinity may lie some
-// hundredths of a g/kg above it.
+// Range: 2 to 42, where the practical scale is defined; outside it, or for NaN, the result is NaN and a [*RangeError].
+// Accuracy: exact by definition for salt of the ocean's proportions; river water and enclosed seas carry other salts.
 func AbsoluteSalinity(practical float64) (gPerKg float64, err error) {
 	const low, high = 2.0, 42.0
 	if !(low <= practical && practical <= high) {

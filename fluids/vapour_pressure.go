@@ -6,14 +6,16 @@ import "math"
 const (
 	saturationLowestKelvin  = 273.15
 	saturationHighestKelvin = criticalKelvin
-	saturationLowestPascal  = 611.213 // table 35's equation at 273.15 K, as section 8.2 of the release rounds it
+	saturationLowestPascal  = 611.212677 // equation 30 at 273.15 K
 	saturationHighestPascal = 22.064e6
 )
 
 // VapourPressure returns the pressure in Pa at which water at a temperature in K boils.
 //
 // Source: IAPWS R7-97(2012), eq. 30 and table 34.
-// Range: 273.15 to 647.096 K; outside it, or for NaN, a [*RangeError].
+// Range: 273.15 to 647.096 K; outside it, or for NaN, the result is NaN and a [*RangeError].
+// Accuracy: table 35 of the release to its nine digits; within 0.014 % of IAPWS-95 to 150 degC, within 0.011 % of the
+// equation of Wagner and Pruss (1993) to 95 degC.
 func VapourPressure(kelvin float64) (pascal float64, err error) {
 	if !(saturationLowestKelvin <= kelvin && kelvin <= saturationHighestKelvin) {
 		return math.NaN(), &RangeError{"IAPWS-IF97 equation 30", "temperature", "K", kelvin, saturationLowestKelvin, saturationHighestKelvin}
@@ -24,7 +26,8 @@ func VapourPressure(kelvin float64) (pascal float64, err error) {
 // BoilingTemperature returns the temperature in K at which water boils under an absolute pressure in Pa.
 //
 // Source: IAPWS R7-97(2012), eq. 31 and table 34.
-// Range: 611.213 Pa to 22.064 MPa; outside it, or for NaN, a [*RangeError].
+// Range: 611.212677 Pa to 22.064 MPa; outside it, or for NaN, the result is NaN and a [*RangeError].
+// Accuracy: table 36 of the release to its nine digits; it undoes [VapourPressure] within 1e-11.
 func BoilingTemperature(pascal float64) (kelvin float64, err error) {
 	if !(saturationLowestPascal <= pascal && pascal <= saturationHighestPascal) {
 		return math.NaN(), &RangeError{"IAPWS-IF97 equation 31", "pressure", "Pa", pascal, saturationLowestPascal, saturationHighestPascal}
@@ -63,25 +66,30 @@ const (
 	n10 = 650.17534844798
 )
 
-// SeaVapourPressure returns the pressure in Pa at which sea water at a temperature in K and an absolute salinity in
+// SeaVapourPressure returns the pressure in Pa at which sea water at a temperature in degC and an absolute salinity in
 // g/kg boils: there water has the same chemical potential in the sea water as in its steam.
 //
-// Salt lowers that potential by [Saline.WaterPotential], steam as an ideal gas follows with its pressure:
+// Salt lowers that potential by [Salt].WaterPotential; steam, taken as an ideal gas, follows with its pressure:
 //
 //	ln(p/p0) = potential/(R T),   p0 from eq. 30 of IAPWS-IF97
 //
+// The potential is taken at atmospheric pressure, whose weight in it is some 1e-6.
+//
 // Source: the boiling equation of IAPWS Advisory Note 5, eq. 7, solved for pressure.
-// Range: 271.15 to 353.15 K, 0 to 45 g/kg; outside it, or for NaN, a [*RangeError].
-func SeaVapourPressure(kelvin, salinity float64) (float64, error) {
-	if err := seaRange("sea water vapour pressure", kelvin-zeroCelsius, salinity); err != nil {
+// Range: -2 to 80 degC, 0 to 45 g/kg; outside it, or for NaN, the result is NaN and a [*RangeError]. Below 0 degC
+// equation 30 leaves its own range, by 2 K.
+// Accuracy: -0.005 to +0.030 % of the equation solved with real steam, the most at 80 degC and 45 g/kg, where steam is
+// least ideal; -0.005 % below 0 degC, against supercooled water by IAPWS SR7-09. Within 0.06 % of the ratio fitted to
+// measurements by Nayar et al., Desalination 390 (2016) 1-24, to 60 degC and 42 g/kg.
+func SeaVapourPressure(celsius, salinity float64) (float64, error) {
+	if err := seaRange("sea water vapour pressure", celsius, salinity); err != nil {
 		return math.NaN(), err
 	}
-	return seaVapourPressure(kelvin, salinity), nil
+	return seaVapourPressure(celsius+zeroCelsius, salinity), nil
 }
 
 func seaVapourPressure(kelvin, salinity float64) float64 {
+	const steamGasConstant = 461.526 // J/(kg K), IAPWS R7-97(2012), eq. 1
 	potential := saline(kelvin, StandardAtmosphere, salinity).WaterPotential
 	return saturation(kelvin) * math.Exp(potential/(steamGasConstant*kelvin))
 }
-
-const steamGasConstant = 461.526 // J/(kg K), IAPWS R7-97(2012) eq. 1

@@ -152,7 +152,7 @@ func saline(kelvin, pascal, salinity float64) Salt {
 var salineLog = [2]float64{5812.81456626732, 851.226734946706}
 
 // salineTerms are the other coefficients of IAPWS R13-08, table 2, in J/kg: those of one j and k in a row, for
-// i = 2, 3 and so on.
+// i = 2, 3 and so on. The two with i = 2, k = 0 and j = 0 or 1 shape enthalpy and entropy only.
 var salineTerms = [...]struct {
 	j, k int
 	g    []float64

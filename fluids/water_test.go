@@ -96,6 +96,7 @@ func TestRangeErrorSays(t *testing.T) {
 	}{
 		{func() error { _, err := Fresh(170, 1e6); return err }, "IAPWS-IF97 region 1: temperature 170 degC is outside 0 to 150 degC"},
 		{func() error { _, err := Fresh(100, 50e3); return err }, "IAPWS-IF97 region 1: pressure 50000 Pa is outside 101417.978 to 2600000 Pa"},
+		{func() error { _, err := Fresh(100, 2.7e6); return err }, "IAPWS-IF97 region 1: pressure 2700000 Pa is outside 101417.978 to 2600000 Pa"},
 		{func() error { _, err := Sea(20, 60, 1e5); return err }, "IAPWS R13-08 sea water: salinity 60 g/kg is outside 0 to 45 g/kg"},
 		{func() error { _, err := AbsoluteSalinity(50); return err }, "PSS-78: practical salinity 50 is outside 2 to 42"},
 	} {

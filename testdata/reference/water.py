@@ -1,5 +1,5 @@
 #!/usr/bin/python3
-"""Write freshwater.csv and seawater.csv beside this file: properties of water by the reference formulations.
+"""Write freshwater.csv, seawater.csv and saline.csv beside this file: properties of water by the reference formulations.
 
 Needs Debian's python3-iapws, python3-gsw and python3-scipy.
 
@@ -126,6 +126,29 @@ def seawater():
         "conductivity_W_m_K", "density_teos_kg_m3", "heat_capacity_teos_J_kg_K"], rows)
 
 
+def saline():
+    rows = []
+    for kelvin in (263.15, 283.15, 313.15, 353):
+        for pascal in (100000, 30000000, 100000000):
+            for text in ("5", "35.16504", "120"):
+                salinity = float(text) / 1000
+                salt = SeaWater._saline(kelvin, pascal / 1e6, salinity)
+                rows.append([
+                    f"{kelvin}",
+                    f"{pascal}",
+                    text,
+                    f"{salt['gp']:.12e}",
+                    f"{-kelvin * salt['gtt'] * 1e3:.12e}",
+                    f"{(salt['g'] - salinity * salt['gs']) * 1e3:.12e}",
+                ])
+    write("saline.csv", [
+        f"Saline part of the Gibbs function of sea water, IAPWS R13-08 eq. 4. Made by water.py with {IAPWS}.",
+        "Away from 273.15 K and from atmospheric pressure at once, where the release's own table 8 is blind to many terms;",
+        "some rows are outside what the release calls its range, which does not matter to the arithmetic.",
+    ], ["temperature_K", "pressure_Pa", "salinity_g_kg", "volume_m3_kg", "heat_capacity_J_kg_K", "water_potential_J_kg"], rows)
+
+
 if __name__ == "__main__":
     freshwater()
     seawater()
+    saline()

@@ -84,6 +84,17 @@ func TestSalineIsOneGibbsFunction(t *testing.T) {
 	}
 }
 
+// What [Sea] says of the corner that the release does not cover: the salt's share of the compression at 80 degC.
+func TestSalineCompressionAboveRelease(t *testing.T) {
+	const kelvin = SeaHighestCelsius + zeroCelsius
+	low, high := saline(kelvin, StandardAtmosphere, SeaSaltiest), saline(kelvin, HighestPascal, SeaSaltiest)
+	s, err := Sea(SeaHighestCelsius, SeaSaltiest, HighestPascal)
+	if err != nil {
+		t.Fatal(err)
+	}
+	within(t, "share of density", s.Density*(high.Volume-low.Volume), 0.03e-2, 0.003e-2)
+}
+
 // testdata/reference/seawater.csv; the bounds are the deviations that [Sea] states.
 func TestSeaAgainstReference(t *testing.T) {
 	g := readGrid(t, "seawater.csv")

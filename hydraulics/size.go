@@ -191,10 +191,7 @@ type wantedSize struct {
 
 func (w wantedSize) byName() bool { return !math.IsNaN(w.nominal) }
 
-// roundingLength is the most, in m, that two lengths which a standard tells apart may differ and still be taken
-// for the same: far less than the hundredth of a millimetre to which walls are given.
-const roundingLength = 1e-6
-
+// is compares decimals that were read and turned into metres alike on both sides, and are therefore equal to the bit.
 func (w wantedSize) is(s Size) bool {
 	if w.series != "" && w.series != s.Series {
 		return false
@@ -202,7 +199,7 @@ func (w wantedSize) is(s Size) bool {
 	if w.byName() {
 		return nominalNumber(s.Nominal) == w.nominal
 	}
-	return math.Abs(s.OutsideDiameter-w.outsideDiameter) < roundingLength && math.Abs(s.Wall-w.wall) < roundingLength
+	return s.OutsideDiameter == w.outsideDiameter && s.Wall == w.wall
 }
 
 // distance returns how far a size lies from the one wanted: in diameter, nominal or outside, and in wall.
@@ -250,10 +247,10 @@ func (c sizeCatalogue) readSize(text string) (wantedSize, error) {
 	return wantedSize{}, e
 }
 
-// sizeNumber returns a word's number, or NaN where it is none.
+// sizeNumber returns the number that one of [nameWords] is, 0 or more; NaN where it is none, or the word for infinity.
 func sizeNumber(word string) float64 {
 	number, err := strconv.ParseFloat(word, 64)
-	if err != nil || !(number > 0 && number < math.Inf(1)) {
+	if err != nil || !(number < math.Inf(1)) {
 		return math.NaN()
 	}
 	return number

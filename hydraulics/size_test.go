@@ -3,6 +3,7 @@ package hydraulics
 import (
 	"encoding/csv"
 	"errors"
+	"fmt"
 	"math"
 	"os"
 	"slices"
@@ -56,10 +57,46 @@ func TestSizesAreSound(t *testing.T) {
 		if ok && !(nominalNumber(s.Nominal) > nominalNumber(before.Nominal) && s.Bore() > before.Bore()) {
 			t.Errorf("%s: %s does not follow %s with a larger bore", s.Standard, s.Name(), before.Name())
 		}
+		if ok && s.Wall < before.Wall {
+			t.Errorf("%s: %s has a thinner wall than %s", s.Standard, s.Name(), before.Name())
+		}
 		last[key] = s
 	}
 	if len(last) != 22 {
 		t.Errorf("%d series seen, want 22", len(last))
+	}
+}
+
+// A heavier series never has the thinner wall at the same nominal size.
+func TestSeriesInOrderOfWeight(t *testing.T) {
+	compared := 0
+	for standard, order := range map[string][]string{
+		"EN 10220":      {"light wall", "normal wall", "heavy wall"},
+		"ASME B36.10M":  {"Sch 10", "Sch 20", "Sch 30", "Sch 40", "Sch 60", "Sch 80"},
+		"ASME B36.10M ": {"STD", "XS"},
+		"ASME B36.19M":  {"10S", "40S"},
+		"JIS G3454":     {"Sch 40", "Sch 80"},
+		"DIN 86019":     {"standard wall", "special wall"},
+		"EEMUA 144":     {"16 bar", "20 bar"},
+	} {
+		for i, series := range order[1:] {
+			for _, light := range Sizes() {
+				if light.Standard != strings.TrimSpace(standard) || light.Series != order[i] {
+					continue
+				}
+				heavy, err := FindSize(standard, light.Nominal+" "+series)
+				if err != nil { // not every series has every size
+					continue
+				}
+				compared++
+				if heavy.Wall < light.Wall || heavy.OutsideDiameter != light.OutsideDiameter {
+					t.Errorf("%s: %s and %s are out of order", light.Standard, heavy.Name(), light.Name())
+				}
+			}
+		}
+	}
+	if compared != 180 {
+		t.Errorf("compared %d pairs, want 180", compared)
 	}
 }
 
@@ -149,6 +186,9 @@ func TestFindSizeRefuses(t *testing.T) {
 			`size of EN 10220: found "", want a name in the catalogue`,
 			`write a nominal size such as "DN 200", or outside diameter and wall in mm such as "219.1x8"`},
 		{"EN 10220", "DN 5", `size of EN 10220: found "DN 5", want a name in the catalogue, such as "DN15", "DN20", "DN25"`, ""},
+		{"EN 10220", "DN 0", `size of EN 10220: found "DN 0", want a name in the catalogue`, ""},
+		{"EN 10220", "0x0", `size of EN 10220: found "0x0", want a name in the catalogue`, ""},
+		{"EN 10220", "DN inf", `size of EN 10220: found "DN inf", want a name in the catalogue`, ""},
 		{"EN 10200", "DN 200",
 			`pipe standard: found "EN 10200", want a name in the catalogue, such as "EN 10220"`,
 			"known are EN 10220, ASME B36.10M, ASME B36.19M, JIS G3454, JIS G3452, DIN 86019, EEMUA 144, GRE"},
@@ -292,10 +332,7 @@ func TestSizesAgainstLibrary(t *testing.T) {
 // Walls of JIS schedules 40 and 80 follow the American ones rounded to a tenth of a millimetre (from memory), though
 // the outside diameters are Japan's own: an independent hold on 38 rows.
 func TestJISWallsAgainstLibrary(t *testing.T) {
-	rounded := map[string]string{ // rows that part from the rounded wall by a tenth, as all sources of them do
-		"300A Sch 80": "17.4 in JIS G3454 against 17.48",
-		"350A Sch 80": "19.0 in JIS G3454 against 19.05",
-	}
+	const apart = "300A Sch 80" // 17.4 in both sources of JIS G3454, against 17.48
 	compared := 0
 	for _, row := range pipeSizeReference(t) {
 		if row[0] != "ASME B36.10M" || row[1] != "Sch 40" && row[1] != "Sch 80" || row[2] == "DN550" || row[2] == "DN600" {
@@ -307,14 +344,9 @@ func TestJISWallsAgainstLibrary(t *testing.T) {
 			continue
 		}
 		compared++
-		american := referenceNumber(t, row[4])
-		difference := math.Abs(inMillimetres(got.Wall) - american)
-		limit := 0.05 // half of the last digit
-		if rounded[got.Name()] != "" {
-			limit = 0.1
-		}
-		if !(difference <= limit+1e-9) {
-			t.Errorf("%s: wall %g mm, American %g mm", got.Name(), inMillimetres(got.Wall), american)
+		difference := math.Abs(inMillimetres(got.Wall) - referenceNumber(t, row[4]))
+		if within := difference <= 0.05+1e-9; within == (got.Name() == apart) { // half of the last digit
+			t.Errorf("%s: wall %g mm, American %s mm", got.Name(), inMillimetres(got.Wall), row[4])
 		}
 	}
 	if compared != 38 {
@@ -436,6 +468,26 @@ func TestGREBoresAgainstNotes(t *testing.T) {
 	if compared != 12 {
 		t.Errorf("compared %d bores, want 12", compared)
 	}
+}
+
+// The bore is what is left between two walls: 6.3 mm less than the nominal size in schedule 80, and 2.7 mm
+// more in schedule 40. Figures: ASME B36.10M-2004 as the library fluids 1.0.22 gives it; the bore by hand.
+func ExampleFindSize() {
+	for _, size := range []string{"DN 200 Sch 80", "DN 200 Sch 40", "219.1 x 6.35"} {
+		s, err := FindSize("ASME B36.10M", size)
+		if err != nil {
+			fmt.Println(err)
+			return
+		}
+		fmt.Printf("%s: bore %.2f mm\n", s.Name(), s.Bore()*1000)
+	}
+	_, err := FindSize("DIN 86019", "DN 210 special wall")
+	fmt.Println(err)
+	// Output:
+	// DN200 Sch 80: bore 193.70 mm
+	// DN200 Sch 40: bore 202.74 mm
+	// DN200 Sch 20: bore 206.40 mm
+	// special wall size of DIN 86019: found "DN 210 special wall", want a name in the catalogue, such as "DN200 special wall", "DN250 special wall", "DN150 special wall"
 }
 
 func FuzzFindSize(f *testing.F) {

@@ -191,7 +191,8 @@ type wantedSize struct {
 
 func (w wantedSize) byName() bool { return !math.IsNaN(w.nominal) }
 
-// is compares decimals that were read and turned into metres alike on both sides, and are therefore equal to the bit.
+// is reports whether a size is the one wanted. Lengths on both sides are decimals of a millimetre, read and turned into
+// metres alike, and therefore equal to the bit where they are the same.
 func (w wantedSize) is(s Size) bool {
 	if w.series != "" && w.series != s.Series {
 		return false

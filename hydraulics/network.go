@@ -29,7 +29,54 @@ type Run struct {
 	Pipe     Pipe
 	Fittings []Fitting
 	Shut     bool // a closed valve: nothing passes
+	Own      OwnWater
 }
+
+// OwnWater is the water of a run where it is warmer or colder than the network's, such as the hot leg of a loop. The
+// zero value is the network's water. Its volume flow counts as that of the rest: the change of volume with temperature,
+// a few per cent at most, is left out of continuity and kept where it drives the water.
+type OwnWater struct {
+	Viscosity    float64 // kinematic, m2/s; 0 stands for the network's water
+	DensityRatio float64 // its density over the network's
+	Rise         float64 // m, elevation of To less that of From
+}
+
+// viscosity returns the kinematic viscosity in the run.
+func (r Run) viscosity(network float64) float64 {
+	if r.Own.Viscosity > 0 {
+		return r.Own.Viscosity
+	}
+	return network
+}
+
+// densityRatio returns the density in the run over the network's.
+func (r Run) densityRatio() float64 {
+	if r.Own.Viscosity > 0 {
+		return r.Own.DensityRatio
+	}
+	return 1
+}
+
+// Buoyancy returns the head (m of the network's water) that the weight of the run's own water takes from a flow from From
+// to To: (ratio - 1) rise. It is negative where lighter water rises, and drives the flow. Two columns of water of one
+// height and other densities stand on each other with just this difference; the circulation it drives is the thermosyphon.
+func (r Run) Buoyancy() float64 { return (r.densityRatio() - 1) * r.Own.Rise }
+
+// PipeLoss returns the friction loss of the run (m of the network's water, of the flow's sign) at a flow (m3/s) in a
+// network of water of the kinematic viscosity nu (m2/s).
+func (r Run) PipeLoss(flow, nu float64) float64 {
+	h, _ := r.Pipe.Loss(flow, r.viscosity(nu))
+	return h * r.densityRatio()
+}
+
+// FittingLoss does the same for one of its fittings, by its place in Fittings.
+func (r Run) FittingLoss(fitting int, flow, nu float64) float64 {
+	h, _ := r.Fittings[fitting].Loss(flow, r.Pipe, r.viscosity(nu))
+	return h * r.densityRatio()
+}
+
+// Reynolds returns the Reynolds number in the run.
+func (r Run) Reynolds(flow, nu float64) float64 { return r.Pipe.Reynolds(flow, r.viscosity(nu)) }
 
 // NonReturn says whether a fitting of the run lets water pass from From to To only.
 func (r Run) NonReturn() bool {
@@ -74,6 +121,9 @@ func (n *Network) Check() error {
 			if err := f.Check(); err != nil {
 				return fmt.Errorf("run %s: %s: %w", r.Name, f.Name, err)
 			}
+		}
+		if r.Own.Viscosity != 0 && (!(r.Own.Viscosity > 0) || !(r.Own.DensityRatio > 0) || math.IsNaN(r.Own.Rise)) {
+			return fmt.Errorf("run %s: water of its own with viscosity %g m2/s and density ratio %g", r.Name, r.Own.Viscosity, r.Own.DensityRatio)
 		}
 		joined.join(r.From, r.To)
 	}

@@ -44,6 +44,7 @@ type link struct {
 	friction frictionLaw
 	fittings []lossLaw // at most one with exponent 2: those are added up
 	drive    HeadSource
+	lift     float64 // head that is taken whatever the flow, m: the weight of the run's own water
 	oneWay   float64 // resistance to reverse flow, m per m3/s; 0 where water may pass both ways
 	start    float64 // first guess of the flow, m3/s
 }
@@ -90,10 +91,14 @@ func NewSolver(n *Network) (*Solver, error) {
 
 // newRunLink adds up a run's losses for water of the kinematic viscosity nu.
 func newRunLink(r Run, nu float64) link {
-	l := link{from: r.From, to: r.To, friction: r.Pipe.law(nu), start: r.Pipe.Area()} // at 1 m/s
+	nu, ratio := r.viscosity(nu), r.densityRatio()
+	l := link{from: r.From, to: r.To, friction: r.Pipe.law(nu), lift: r.Buoyancy(), start: r.Pipe.Area()} // at 1 m/s
+	l.friction.scale *= ratio
 	square := lossLaw{exponent: 2}
 	for _, f := range r.Fittings {
 		law := f.law(r.Pipe, nu)
+		law.power *= ratio
+		law.linear *= ratio
 		if law.exponent != 2 {
 			l.fittings = append(l.fittings, law)
 			continue
@@ -373,6 +378,7 @@ func (l *link) lossAt(flow float64) (loss, slope float64) {
 			loss += h
 			slope += dh
 		}
+		loss += l.lift
 	}
 	if flow < 0 && l.oneWay > 0 {
 		loss += l.oneWay * flow

@@ -75,7 +75,7 @@ func newRoot(s streams) *cobra.Command {
 	root.SetFlagErrorFunc(func(c *cobra.Command, err error) error {
 		return fmt.Errorf("%w\n\thint: %s --help lists the flags", err, c.CommandPath())
 	})
-	root.AddCommand(newCheck(s))
+	root.AddCommand(newCheck(s), newWater(s))
 	return root
 }
 
@@ -108,17 +108,29 @@ func addCommon(c *cobra.Command, o *common) {
 	f.StringVar(&o.change, "change", "", "folder with the tables that a planned change rewrites")
 	f.StringArrayVar(&o.conditions, "condition", nil, "only this condition (may be given again)")
 	f.StringVar(&o.unitSystem, "units", "metric", "units of text and csv: "+strings.Join(report.UnitSystems, ", "))
-	for flag, values := range map[string][]string{"format": formats, "units": report.UnitSystems} {
-		if err := c.RegisterFlagCompletionFunc(flag, cobra.FixedCompletions(values, cobra.ShellCompDirectiveNoFileComp)); err != nil {
-			panic("a flag just made is not there: " + err.Error())
-		}
+	completeFrom(c, "format", formats)
+	completeFrom(c, "units", report.UnitSystems)
+}
+
+// completeFrom lets the shell complete a flag from a list.
+func completeFrom(c *cobra.Command, flag string, values []string) {
+	if err := c.RegisterFlagCompletionFunc(flag, cobra.FixedCompletions(values, cobra.ShellCompDirectiveNoFileComp)); err != nil {
+		panic("a flag just made is not there: " + err.Error())
 	}
+}
+
+// oneOf refuses a flag's value that is not among those it may have.
+func oneOf(flag, value string, values []string) error {
+	if slices.Contains(values, value) {
+		return nil
+	}
+	return fmt.Errorf("%s: found %q, want one of %s", flag, value, strings.Join(values, ", "))
 }
 
 // parse checks the flags that have a list of values.
 func (o *common) parse() (err error) {
-	if !slices.Contains(formats, o.format) {
-		return fmt.Errorf("format: found %q, want one of %s", o.format, strings.Join(formats, ", "))
+	if err := oneOf("format", o.format, formats); err != nil {
+		return err
 	}
 	o.units, err = report.ParseUnits(o.unitSystem)
 	return err

@@ -59,6 +59,7 @@ var tables = []table{
 		number("roughness", length, between(0, 0.1)),
 		number("fouling", length, between(0, 1)),
 		word("state", "open", "shut"),
+		number("temperature", temperature, between(-5, 150)),
 		text("note"),
 	}},
 	{name: fittingsTable, required: true, columns: []column{
@@ -135,7 +136,7 @@ var readingQuantities = []Quantity{pressure, flow, power, temperature, speed, le
 // settable are the columns that a condition may set for one element, by table.
 var settable = map[string][]string{
 	pointsTable:   {"level", "pressure", "draw"},
-	runsTable:     {"state", "roughness", "fouling"},
+	runsTable:     {"state", "roughness", "fouling", "temperature"},
 	fittingsTable: {"blockage", "opening", "k", "kv", "rated drop"},
 	pumpsTable:    {"speed", "wear", "impeller"},
 }

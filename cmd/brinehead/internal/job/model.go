@@ -174,16 +174,28 @@ func (b *builder) text(element Text, quantity string, own Text) Text {
 func (b *builder) water() {
 	c := b.condition
 	b.plant.Atmosphere = c.Atmosphere.Or(fluids.StandardAtmosphere)
+	b.plant.Water = b.waterAt(c.Temperature)
+}
+
+// waterAt returns the condition's water at a temperature. Its pressure is the atmosphere's, or what keeps it liquid where
+// that is more: within a circuit's pressures the density changes by parts in ten thousand.
+func (b *builder) waterAt(temperature Number) fluids.State {
+	c := b.condition
+	var state fluids.State
 	var err error
-	switch celsius := c.Temperature.Value; fold(c.Water.Value) {
-	case "sea":
-		b.plant.Water, err = fluids.Sea(celsius, c.Salinity.Or(fluids.StandardSalinity), b.plant.Atmosphere)
-	default:
-		b.plant.Water, err = fluids.Fresh(celsius, b.plant.Atmosphere)
+	if fold(c.Water.Value) == "sea" {
+		state, err = fluids.Sea(temperature.Value, c.Salinity.Or(fluids.StandardSalinity), b.plant.Atmosphere)
+	} else {
+		pressure := b.plant.Atmosphere
+		if vapour, boils := fluids.VapourPressure(temperature.Value + 273.15); boils == nil {
+			pressure = math.Max(pressure, vapour)
+		}
+		state, err = fluids.Fresh(temperature.Value, pressure)
 	}
 	if err != nil {
-		b.fault(c.Temperature.Place, fmt.Sprintf("%g", c.Temperature.Value), "water in the range of its properties: "+err.Error(), "")
+		b.fault(temperature.Place, fmt.Sprintf("%g degC", temperature.Value), "water in the range of its properties: "+err.Error(), "")
 	}
+	return state
 }
 
 func (b *builder) points() {
@@ -225,6 +237,11 @@ func (b *builder) runs() {
 				Fouling: b.number(r.Run, "fouling", r.Fouling).Or(0)},
 			Fittings: fittings[fold(r.Run.Value)],
 			Shut:     fold(b.text(r.Run, "state", r.State).Value) == "shut"}
+		if t := b.number(r.Run, "temperature", r.Temperature); t.Given {
+			own := b.waterAt(t)
+			run.Own = hydraulics.OwnWater{Viscosity: own.KinematicViscosity(), DensityRatio: own.Density / b.plant.Water.Density,
+				Rise: b.plant.Elevations[run.To] - b.plant.Elevations[run.From]}
+		}
 		if err := run.Pipe.Check(); err != nil {
 			b.fault(r.Run.Place, r.Run.Value, "a pipe that can be: "+err.Error(), "")
 		}

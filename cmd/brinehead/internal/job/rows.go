@@ -67,18 +67,19 @@ type PointRow struct {
 
 // RunRow is a row of runs.csv.
 type RunRow struct {
-	Run       Text   `csv:"run"`
-	From      Text   `csv:"from"`
-	To        Text   `csv:"to"`
-	Length    Number `csv:"length"`
-	Bore      Number `csv:"bore"`
-	Standard  Text   `csv:"standard"`
-	Size      Text   `csv:"size"`
-	Material  Text   `csv:"material"`
-	Roughness Number `csv:"roughness"`
-	Fouling   Number `csv:"fouling"`
-	State     Text   `csv:"state"`
-	Note      Text   `csv:"note"`
+	Run         Text   `csv:"run"`
+	From        Text   `csv:"from"`
+	To          Text   `csv:"to"`
+	Length      Number `csv:"length"`
+	Bore        Number `csv:"bore"`
+	Standard    Text   `csv:"standard"`
+	Size        Text   `csv:"size"`
+	Material    Text   `csv:"material"`
+	Roughness   Number `csv:"roughness"`
+	Fouling     Number `csv:"fouling"`
+	State       Text   `csv:"state"`
+	Temperature Number `csv:"temperature"`
+	Note        Text   `csv:"note"`
 }
 
 // FittingRow is a row of fittings.csv.

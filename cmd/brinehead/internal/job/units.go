@@ -3,6 +3,8 @@ package job
 import (
 	"fmt"
 	"math"
+	"regexp"
+	"strconv"
 	"strings"
 )
 
@@ -129,3 +131,30 @@ func above(low, high float64) interval   { return interval{low: low, high: high,
 func below(low, high float64) interval   { return interval{low: low, high: high, highOpen: true} }
 
 var anyNumber = between(math.Inf(-1), math.Inf(1))
+
+// flagQuantities are the quantities that a command line may give with a unit.
+var flagQuantities = map[string]Quantity{"temperature": temperature, "pressure": pressure, "salinity": salinity, "length": length, "flow": flow}
+
+var quantityForm = regexp.MustCompile(`^\s*([+-]?(?:\d+\.?\d*|\.\d+)(?:[eE][+-]?\d+)?)\s*(.*?)\s*$`)
+
+// ParseQuantity reads a number with or without a unit of a quantity of flagQuantities, as a command line gives it:
+// "32", "90degF", "2.5 psi". Without one the unit is the quantity's first. It returns the value in SI and the unit.
+func ParseQuantity(quantity, text string) (si float64, u Unit, err error) {
+	q := flagQuantities[quantity]
+	parts := quantityForm.FindStringSubmatch(text)
+	if parts == nil {
+		return math.NaN(), Unit{}, fmt.Errorf("found %q, want a number, with or without one of the units %s", text, q.names())
+	}
+	u = q.Units[0]
+	if parts[2] != "" {
+		var known bool
+		if u, known = q.unit(parts[2]); !known {
+			return math.NaN(), Unit{}, fmt.Errorf("found the unit %q, want one of %s", parts[2], q.names())
+		}
+	}
+	value, err := strconv.ParseFloat(parts[1], 64)
+	if err != nil {
+		return math.NaN(), Unit{}, fmt.Errorf("found %q, want a number of ordinary size", text)
+	}
+	return u.ToSI(value), u, nil
+}

@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"io"
 	"slices"
+	"strconv"
 	"strings"
 
 	"brinehead/cmd/brinehead/internal/study"
@@ -212,12 +213,17 @@ type csvTable struct {
 func (t *csvTable) add(cells ...string) { t.rows = append(t.rows, cells) }
 
 // figure writes a value with six significant digits.
-func (t *csvTable) figure(v study.Figure, metric string) string {
+func (t *csvTable) figure(v study.Figure, metric string) string { return t.digits(v, metric, 6) }
+
+// long writes a value with eight, for the properties of water, which are known that well.
+func (t *csvTable) long(v study.Figure, metric string) string { return t.digits(v, metric, 8) }
+
+func (t *csvTable) digits(v study.Figure, metric string, digits int) string {
 	v = t.units.Turn(v, metric)
 	if !v.Known() {
 		return ""
 	}
-	return fmt.Sprintf("%.6g", float64(v))
+	return strconv.FormatFloat(float64(v), 'g', digits, 64)
 }
 
 // word makes a cell of the user's text harmless for a spreadsheet, which would take one that begins with an operator

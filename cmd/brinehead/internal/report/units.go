@@ -45,6 +45,13 @@ var usCustomary = map[string]turn{
 	"bar":  {"psi", 1e5 / 6894.757293168361, 0},
 	"kW":   {"hp", 1e3 / 745.6998715822702, 0},
 	"degC": {"degF", 1.8, 32},
+
+	"kg/m3":     {"lb/ft3", 0.3048 * 0.3048 * 0.3048 / 0.45359237, 0},
+	"mPa s":     {"cP", 1, 0},
+	"mm2/s":     {"cSt", 1, 0},
+	"kPa":       {"psi", 1e3 / 6894.757293168361, 0},
+	"kJ/(kg K)": {"Btu/(lb degF)", 1 / 4.1868, 0}, // International Table Btu
+	"W/(m K)":   {"Btu/(h ft degF)", 3600 * 0.3048 / (1055.05585262 * 1.8), 0},
 }
 
 // Unit returns the unit in which a value of the metric unit is written.

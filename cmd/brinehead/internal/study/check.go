@@ -76,6 +76,7 @@ type Run struct {
 	FrictionFactor Figure `json:"friction_factor"`
 	PipeLoss       Figure `json:"pipe_loss_m"`
 	FittingLoss    Figure `json:"fitting_loss_m"`
+	Buoyancy       Figure `json:"buoyancy_m"` // taken by the weight of the run's own water; below 0 where it drives the flow
 	Regime         string `json:"regime"`
 	Shut           bool   `json:"shut"`
 }
@@ -208,7 +209,7 @@ func (c *Condition) withhold() {
 	}
 	for i, r := range c.Runs {
 		if !r.Shut {
-			c.Runs[i] = Run{Run: r.Run, Flow: unknown, Velocity: unknown, Reynolds: unknown, FrictionFactor: unknown, PipeLoss: unknown, FittingLoss: unknown}
+			c.Runs[i] = Run{Run: r.Run, Flow: unknown, Velocity: unknown, Reynolds: unknown, FrictionFactor: unknown, PipeLoss: unknown, FittingLoss: unknown, Buoyancy: unknown}
 		}
 	}
 	for i := range c.Fittings {
@@ -238,32 +239,31 @@ func beyondCurve(s *curves.Solved, pump int) string {
 }
 
 func runOf(r hydraulics.Run, flow, viscosity float64) Run {
-	out := Run{Run: r.Name, Flow: Figure(flow * 3600), Velocity: unknown, Reynolds: unknown, FrictionFactor: unknown, PipeLoss: unknown, FittingLoss: unknown, Shut: r.Shut}
+	out := Run{Run: r.Name, Flow: Figure(flow * 3600), Velocity: unknown, Reynolds: unknown, FrictionFactor: unknown, PipeLoss: unknown, FittingLoss: unknown, Buoyancy: unknown, Shut: r.Shut}
 	if r.Shut {
 		return out
 	}
 	out.Velocity = Figure(flow / r.Pipe.Area())
-	re := r.Pipe.Reynolds(flow, viscosity)
+	re := r.Reynolds(flow, viscosity)
 	out.Reynolds = Figure(re)
 	out.Regime = hydraulics.RegimeOf(re).String()
 	if f, _, err := hydraulics.FrictionFactor(re, r.Pipe.Roughness/r.Pipe.ClearBore()); err == nil && r.Pipe.Length > 0 {
 		out.FrictionFactor = Figure(f)
 	}
-	pipe, _ := r.Pipe.Loss(flow, viscosity)
 	fittings := 0.0
-	for _, f := range r.Fittings {
-		h, _ := f.Loss(flow, r.Pipe, viscosity)
-		fittings += h
+	for k := range r.Fittings {
+		fittings += r.FittingLoss(k, flow, viscosity)
 	}
-	out.PipeLoss, out.FittingLoss = Figure(pipe), Figure(fittings)
+	out.PipeLoss, out.FittingLoss = Figure(r.PipeLoss(flow, viscosity)), Figure(fittings)
+	out.Buoyancy = Figure(r.Buoyancy())
 	return out
 }
 
 func fittingsOf(s *curves.Solved, run int) []Fitting {
 	r := s.Network.Runs[run]
 	var list []Fitting
-	for _, f := range r.Fittings {
-		h, _ := f.Loss(s.RunFlows[run], r.Pipe, s.Network.Viscosity)
+	for k, f := range r.Fittings {
+		h := r.FittingLoss(k, s.RunFlows[run], s.Network.Viscosity)
 		row := Fitting{Run: r.Name, Tag: f.Tag, Fitting: f.Name, Loss: Figure(h), Drop: Figure(h * s.Water.Density * fluids.Gravity / 1e5), Outlet: unknown}
 		if r.Shut {
 			row.Loss, row.Drop = unknown, unknown

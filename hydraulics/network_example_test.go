@@ -8,6 +8,9 @@ import (
 	"brinehead/hydraulics"
 )
 
+// gpm is the US gallon a minute, m3/s.
+const gpm = 3.785411784e-3 / 60
+
 // solve builds and solves a network, or says why not.
 func solve(n *hydraulics.Network) *hydraulics.Solution {
 	solver, err := hydraulics.NewSolver(n)

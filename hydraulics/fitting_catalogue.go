@@ -8,6 +8,7 @@ import (
 	"strings"
 
 	"brinehead/fluids"
+	"brinehead/spelling"
 )
 
 // Dimensions is what a row says of a fitting beside its name. NaN stands for "not given"; [BareDimensions] starts
@@ -91,7 +92,7 @@ type CatalogueEntry struct {
 
 	Method string // the law, in one line
 	Source string // author, work, edition, table or diagram
-	Mark   string // R read in the source, 2R in two that agree, M from memory, C computed here
+	Mark   Mark   // R read in the source, 2R in two that agree, M from memory, C computed here
 
 	// Scatter is how far a single fitting may lie from the figure, as a fraction of it; ScatterBelow the same
 	// downwards where it differs, 0 where it does not. ScatterSource says who says so.
@@ -242,19 +243,8 @@ func CatalogueFittings() []CatalogueEntry {
 		orificeEntries(), screenEntries(), coolerEntries(), bellowsEntries(), teeEntries())
 }
 
-// UnknownFitting tells that no fitting of the catalogue has the name.
-type UnknownFitting struct {
-	Name    string
-	Nearest []string // names of the catalogue that look most like it, best first
-}
-
-// Error names the nearest fittings.
-func (e *UnknownFitting) Error() string {
-	return fmt.Sprintf("no fitting %q in the catalogue; nearest: %s", e.Name, strings.Join(e.Nearest, ", "))
-}
-
 // FindFitting returns the entry of a name or alias, without regard to case, spaces, hyphens, commas and the word
-// or sign for degrees. The error is an [*UnknownFitting].
+// or sign for degrees. The error is an [*UnknownNameError].
 func FindFitting(name string) (CatalogueEntry, error) {
 	key := fittingKey(name)
 	entries := CatalogueFittings()
@@ -265,7 +255,8 @@ func FindFitting(name string) (CatalogueEntry, error) {
 			}
 		}
 	}
-	return CatalogueEntry{}, &UnknownFitting{name, nearestFittings(key, entries)}
+	return CatalogueEntry{}, &UnknownNameError{Kind: "fitting", Name: name, Nearest: nearestFittings(key, entries),
+		Hint: "give the loss itself: k, kv, or a rated flow and drop"}
 }
 
 func (e CatalogueEntry) names() []string { return append([]string{e.Name}, e.Aliases...) }
@@ -277,7 +268,8 @@ func fittingKey(name string) string {
 	return strings.Join(words, "")
 }
 
-// nearestFittings returns the three entries whose names take the fewest edits, each under its own name.
+// nearestFittings returns up to three entries whose names take the fewest edits, each under its own name; one that takes
+// more than a third of its letters is not near.
 func nearestFittings(key string, entries []CatalogueEntry) []string {
 	type candidate struct {
 		name  string
@@ -287,36 +279,16 @@ func nearestFittings(key string, entries []CatalogueEntry) []string {
 	for _, e := range entries {
 		best := math.MaxInt
 		for _, n := range e.names() {
-			best = min(best, fittingEdits(key, fittingKey(n)))
+			best = min(best, spelling.Distance(key, fittingKey(n)))
 		}
 		all = append(all, candidate{e.Name, best})
 	}
 	slices.SortStableFunc(all, func(a, b candidate) int { return a.edits - b.edits })
 	var names []string
 	for _, c := range all[:min(3, len(all))] {
-		names = append(names, c.name)
-	}
-	return names
-}
-
-// fittingEdits is the number of letters to change, add or take away to turn a into b (V. Levenshtein, 1966).
-func fittingEdits(a, b string) int {
-	from, to := []rune(a), []rune(b)
-	row := make([]int, len(to)+1)
-	for j := range row {
-		row[j] = j
-	}
-	for i, r := range from {
-		diagonal := row[0]
-		row[0] = i + 1
-		for j, s := range to {
-			change := diagonal
-			if r != s {
-				change++
-			}
-			diagonal = row[j+1]
-			row[j+1] = min(change, row[j]+1, row[j+1]+1)
+		if c.edits <= max(2, len(key)/3) {
+			names = append(names, c.name)
 		}
 	}
-	return row[len(to)]
+	return names
 }

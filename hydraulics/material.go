@@ -106,12 +106,12 @@ func (m Material) spellings() []string { return append([]string{m.Name}, m.Alias
 // nearest returns the nearest materials by spelling or, where the text is like none but longer, the nearest materials
 // with their state.
 func (t materialTables) nearest(name string) []string {
-	var bare, inState []spelling
+	var bare, inState []wayToWrite
 	for _, m := range t.materials {
 		for _, alias := range m.spellings() {
-			bare = append(bare, spelling{alias, m.Name})
+			bare = append(bare, wayToWrite{alias, m.Name})
 			for _, r := range m.Roughness {
-				inState = append(inState, spelling{alias + ", " + string(r.State), m.inState(r.State)})
+				inState = append(inState, wayToWrite{alias + ", " + string(r.State), m.inState(r.State)})
 			}
 		}
 	}

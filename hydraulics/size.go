@@ -164,11 +164,11 @@ func findSizeCatalogue(text string) (found sizeCatalogue, rest []string, err err
 	given := nameWords(text)
 	longest := 0
 	var names []string
-	var known []spelling
+	var known []wayToWrite
 	for _, c := range sizeCatalogues() {
 		names = append(names, c.Name)
 		for _, name := range append([]string{c.Name}, c.Aliases...) {
-			known = append(known, spelling{name, name})
+			known = append(known, wayToWrite{name, name})
 			words := nameWords(name)
 			if len(words) > longest && len(words) <= len(given) && slices.Equal(words, given[:len(words)]) {
 				found, rest, longest = c, given[len(words):], len(words)

@@ -99,5 +99,5 @@ func ExampleFindFitting() {
 	//  75 %: 2.4
 	//  50 %: 19.1
 	//  25 %: 439
-	// no fitting "buterfly valve" in the catalogue; nearest: butterfly valve, gate valve, ball valve
+	// fitting: found "buterfly valve", want a name in the catalogue, such as "butterfly valve"
 }

@@ -175,7 +175,7 @@ func TestUnknownIsNoPass(t *testing.T) {
 
 // Bad input and bad command lines: exit code 2, one clear message on stderr, nothing on stdout, nothing written.
 func TestRefusals(t *testing.T) {
-	bad := copyJob(t, seawater, [3]string{"runs.csv", "7.5,360", "-7.5,36O"})
+	bad := copyJob(t, seawater, [3]string{"runs.csv", "CROSSOVER,7.5,", "CROSSOVER,-7.5,"}, [3]string{"points.csv", "chests\n", "chests\nX,junction,O.5,\n"})
 	full := t.TempDir()
 	file := filepath.Join(full, "file")
 	if err := os.WriteFile(file, nil, 0o644); err != nil {
@@ -191,8 +191,8 @@ func TestRefusals(t *testing.T) {
 		"unknown flag: --frmat":                             {"check", seawater, "--frmat", "json"},
 		`unknown command "chekc"`:                           {"chekc"},
 		`nearest is "ballast, tropics"`:                     {"check", seawater, "--condition", "balast, tropics"},
-		`runs.csv:3:33: length [m]: found "-7.5", want at least 0, at most 100000` + "\n" +
-			`runs.csv:3:38: bore [mm]: found "36O", want a number, at least 2, at most 5000` + "\n": {"check", bad, "--out", filepath.Join(full, "out")},
+		`points.csv:6:12: elevation [m]: found "O.5", want a number, at least -100, at most 200` + "\n" +
+			`runs.csv:3:33: length [m]: found "-7.5", want at least 0, at most 100000` + "\n": {"check", bad, "--out", filepath.Join(full, "out")},
 		"change folder: found no table": {"check", seawater, "--change", full},
 	} {
 		code, out, stderr := brinehead(args...)
@@ -244,8 +244,8 @@ func TestOutFolder(t *testing.T) {
 		return files
 	}
 	first, second := read(), read()
-	if len(first) != 3+7*4 {
-		t.Errorf("%d files, want 3 tables and 4 plots of each of 7 conditions", len(first))
+	if len(first) != 4+7*4 {
+		t.Errorf("%d files, want 4 tables and 4 plots of each of 7 conditions", len(first))
 	}
 	for name, content := range first {
 		if content == "" || content != second[name] {
@@ -350,7 +350,7 @@ func BenchmarkSolveDemo(b *testing.B) {
 	}
 	b.ReportAllocs()
 	for b.Loop() {
-		p, err := j.Plant("ballast, tropics")
+		p, err := j.Build("ballast, tropics")
 		if err != nil {
 			b.Fatal(err)
 		}

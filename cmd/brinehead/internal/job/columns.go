@@ -1,5 +1,7 @@
 package job
 
+import "math"
+
 // column is what one column of a table may hold.
 type column struct {
 	name     string // as in the contract, in lower case
@@ -49,6 +51,8 @@ var tables = []table{
 		number("level", length, between(-100, 200)),
 		number("pressure", pressure, between(-1.1e5, 1e8)),
 		number("draw", flow, between(-100, 100)),
+		text("straight"),
+		number("tee angle", angle, between(0, math.Pi)),
 		text("note"),
 	}},
 	{name: runsTable, required: true, key: "run", columns: []column{
@@ -60,6 +64,7 @@ var tables = []table{
 		number("fouling", length, between(0, 1)),
 		word("state", "open", "shut"),
 		number("temperature", temperature, between(-5, 150)),
+		number("high point", length, between(-100, 200)),
 		text("note"),
 	}},
 	{name: fittingsTable, required: true, columns: []column{
@@ -75,6 +80,17 @@ var tables = []table{
 		number("blockage", share, below(0, 1)),
 		number("opening", share, between(0, 1)),
 		number("heat", power, between(-1e9, 1e9)),
+		number("angle", angle, between(0, math.Pi)),
+		number("radius ratio", plain, between(0, 100)),
+		number("second bore", length, between(0.002, 5)),
+		number("open area", share, above(0, 1)),
+		number("hole", length, above(0, 5)),
+		number("pitch", length, above(0, 5)),
+		number("face area", area, above(0, 100)),
+		number("area ratio", plain, above(0, 1000)),
+		number("mesh", plain, between(0, 1000)),
+		{name: "cuts", quantity: plain, within: between(1, 20), integer: true},
+		number("length", length, between(0, 100)),
 		text("note"),
 	}},
 	{name: pumpsTable, required: true, key: "pump", columns: []column{

@@ -1,6 +1,7 @@
 package job
 
 import (
+	"errors"
 	"fmt"
 	"io/fs"
 	"math"
@@ -20,6 +21,30 @@ type Job struct {
 	Tables *Tables
 
 	curves map[string][]*pumps.Curve // by name of the curve, one for each impeller and speed
+	sizes  map[[2]string]sizeFound   // of the runs, looked up once
+}
+
+// sizeFound is the outcome of looking up a pipe size.
+type sizeFound struct {
+	size hydraulics.Size
+	err  error
+}
+
+// size looks a pipe size up, once for all conditions.
+func (j *Job) size(standard, name string) (hydraulics.Size, error) {
+	return j.sizes[[2]string{standard, name}].size, j.sizes[[2]string{standard, name}].err
+}
+
+// findSizes looks up the sizes that the runs name.
+func (j *Job) findSizes() {
+	for _, r := range j.Tables.Runs {
+		if key := [2]string{r.Standard.Value, r.Size.Value}; !r.Bore.Given {
+			if _, done := j.sizes[key]; !done {
+				size, err := hydraulics.FindSize(key[0], key[1])
+				j.sizes[key] = sizeFound{size, err}
+			}
+		}
+	}
 }
 
 // Read reads the job in a folder, with the tables of a change folder in place of its own where change is not nil.
@@ -29,12 +54,13 @@ func Read(name string, folder, change fs.FS) (*Job, error) {
 	if err != nil {
 		return nil, err
 	}
-	j := &Job{Name: name, Tables: tables, curves: map[string][]*pumps.Curve{}}
+	j := &Job{Name: name, Tables: tables, curves: map[string][]*pumps.Curve{}, sizes: map[[2]string]sizeFound{}}
+	j.findSizes()
 	var faults Faults
 	faults = append(faults, j.fitCurves()...)
 	if faults == nil {
 		for _, c := range tables.Conditions { // what only shows when the model is built is still a fault of the tables
-			if _, err := j.Plant(c.Condition.Value); err != nil {
+			if _, err := j.Build(c.Condition.Value); err != nil {
 				var more Faults
 				if !asFaults(err, &more) {
 					return nil, err
@@ -98,12 +124,6 @@ func (j *Job) Conditions() []string {
 	return names
 }
 
-// Condition returns a condition's row; the name must be one of Conditions.
-func (j *Job) Condition(name string) ConditionRow {
-	row, _ := j.condition(name)
-	return row
-}
-
 // condition finds a condition's row.
 func (j *Job) condition(name string) (ConditionRow, error) {
 	for _, c := range j.Tables.Conditions {
@@ -115,9 +135,31 @@ func (j *Job) condition(name string) (ConditionRow, error) {
 		Hint: nearestHint(name, j.Conditions())}}
 }
 
-// Plant builds the plant of one condition: the tables with the condition's own values in place of theirs. The error
-// is Faults that name the rows concerned.
-func (j *Job) Plant(name string) (*curves.Plant, error) {
+// Case is a job in one condition: its plant, and what the program itself has put in where the tables left it open.
+type Case struct {
+	*curves.Plant
+	Row      ConditionRow
+	Supplied []Supplied
+	Walls    []Wall // by run
+}
+
+// Supplied is a figure that comes from a catalogue or a default, not from the tables.
+type Supplied struct {
+	On     string // the run, or the tag or name of a fitting
+	What   string // "bore", "roughness", "loss coefficient", ...
+	Figure string // with its unit
+	Source string // the entry, its publication and mark
+}
+
+// Wall is what a run's material says of the velocities it bears in sea water; a bound no source has is not known.
+type Wall struct {
+	Material        string
+	Least, Greatest hydraulics.Bound
+}
+
+// Build builds one condition: the tables with the condition's own values in place of theirs. The error is Faults that
+// name the rows concerned.
+func (j *Job) Build(name string) (*Case, error) {
 	row, err := j.condition(name)
 	if err != nil {
 		return nil, err
@@ -135,7 +177,7 @@ func (j *Job) Plant(name string) (*curves.Plant, error) {
 		return nil, Faults{{Place: Place{File: "runs.csv"}, Found: err.Error(),
 			Want: fmt.Sprintf("a circuit that can be solved (condition %s, line %d of conditions.csv)", row.Condition.Value, place.Line)}}
 	}
-	return b.plant, nil
+	return &Case{b.plant, row, b.supplied, b.walls}, nil
 }
 
 // builder gathers the plant of one condition and the faults met on the way.
@@ -144,7 +186,13 @@ type builder struct {
 	condition ConditionRow
 	plant     *curves.Plant
 	point     map[string]int
+	supplied  []Supplied
+	walls     []Wall
 	faults    Faults
+}
+
+func (b *builder) supply(on, what, figure, source string) {
+	b.supplied = append(b.supplied, Supplied{on, what, figure, source})
 }
 
 func (b *builder) fault(at Place, found, want, hint string) {
@@ -226,50 +274,162 @@ func (b *builder) points() {
 }
 
 func (b *builder) runs() {
-	fittings := map[string][]hydraulics.Fitting{}
+	fittings := map[string][]FittingRow{}
 	for _, r := range b.job.Tables.Fittings {
 		key := fold(r.Run.Value)
-		fittings[key] = append(fittings[key], b.fitting(r))
+		fittings[key] = append(fittings[key], r)
 	}
 	for _, r := range b.job.Tables.Runs {
 		run := hydraulics.Run{Name: r.Run.Value, From: b.point[fold(r.From.Value)], To: b.point[fold(r.To.Value)],
-			Pipe: hydraulics.Pipe{Length: r.Length.Value, Bore: r.Bore.Value, Roughness: b.number(r.Run, "roughness", r.Roughness).Or(0),
-				Fouling: b.number(r.Run, "fouling", r.Fouling).Or(0)},
-			Fittings: fittings[fold(r.Run.Value)],
-			Shut:     fold(b.text(r.Run, "state", r.State).Value) == "shut"}
+			Pipe: hydraulics.Pipe{Length: r.Length.Value, Bore: b.bore(r), Fouling: b.number(r.Run, "fouling", r.Fouling).Or(0)},
+			Shut: fold(b.text(r.Run, "state", r.State).Value) == "shut"}
+		run.Pipe.Roughness = b.wall(r, run.Pipe)
 		if t := b.number(r.Run, "temperature", r.Temperature); t.Given {
 			own := b.waterAt(t)
 			run.Own = hydraulics.OwnWater{Viscosity: own.KinematicViscosity(), DensityRatio: own.Density / b.plant.Water.Density,
 				Rise: b.plant.Elevations[run.To] - b.plant.Elevations[run.From]}
 		}
-		if err := run.Pipe.Check(); err != nil {
+		if math.IsNaN(run.Pipe.Bore) {
+			// an unknown size, told already
+		} else if err := run.Pipe.Check(); err != nil {
 			b.fault(r.Run.Place, r.Run.Value, "a pipe that can be: "+err.Error(), "")
+		} else {
+			for _, f := range fittings[fold(r.Run.Value)] {
+				fitting, shut := b.fitting(f, run.Pipe)
+				run.Fittings = append(run.Fittings, fitting)
+				run.Shut = run.Shut || shut
+			}
 		}
 		b.plant.Network.Runs = append(b.plant.Network.Runs, run)
 	}
+}
+
+// bore returns a run's bore: its own, or that of its size in its standard.
+func (b *builder) bore(r RunRow) float64 {
+	if r.Bore.Given {
+		return r.Bore.Value
+	}
+	size, err := b.job.size(r.Standard.Value, r.Size.Value)
+	if err != nil {
+		place := r.Size.Place
+		if strings.HasPrefix(err.Error(), "pipe standard") {
+			place = r.Standard.Place
+		}
+		b.unknownName(place, err, "brinehead catalogue sizes")
+		return math.NaN()
+	}
+	b.supply(r.Run.Value, "bore", fmt.Sprintf("%.1f mm", size.Bore()*1e3), fmt.Sprintf("%s %s, %g x %g mm; %s", size.Standard, size.Name(),
+		size.OutsideDiameter*1e3, size.Wall*1e3, size.Mark.Meaning()))
+	return size.Bore()
+}
+
+// unknownName faults a name that a catalogue does not have, or that fits several of its entries.
+func (b *builder) unknownName(at Place, err error, command string) {
+	var unknown *hydraulics.UnknownNameError
+	if !errors.As(err, &unknown) {
+		b.fault(at, err.Error(), "a name of the catalogue", command)
+		return
+	}
+	hint := "all of them: " + command
+	if len(unknown.Nearest) > 0 {
+		hint = `nearest: "` + strings.Join(unknown.Nearest, `", "`) + `"; ` + hint
+	}
+	b.fault(at, quoted(unknown.Name), "a name of the catalogue: "+unknown.Kind, hint)
+}
+
+// wall returns a run's roughness: its own, or that of its material; and notes what velocities the material bears.
+func (b *builder) wall(r RunRow, pipe hydraulics.Pipe) float64 {
+	wall := Wall{Least: hydraulics.Bound{Velocity: math.NaN()}, Greatest: hydraulics.Bound{Velocity: math.NaN()}}
+	own := b.number(r.Run, "roughness", r.Roughness)
+	roughness := own.Or(0)
+	if r.Material.Given() {
+		material, state, err := hydraulics.FindMaterial(r.Material.Value)
+		if err != nil {
+			b.unknownName(r.Material.Place, err, "brinehead catalogue materials")
+		} else {
+			wall.Material = material.Name
+			if least, greatest, err := hydraulics.VelocityBounds(material, pipe.ClearBore()); err == nil && fold(b.condition.Water.Value) == "sea" {
+				wall.Least, wall.Greatest = least, greatest
+			}
+			if figure, err := material.RoughnessIn(state); err == nil && !own.Given {
+				roughness = figure.Height
+				b.supply(r.Run.Value, "roughness", fmt.Sprintf("%g mm", figure.Height*1e3), fmt.Sprintf("%s, %s: %s; %s", material.Name, state, figure.Source, figure.Mark.Meaning()))
+			} else if err != nil && !own.Given {
+				b.unknownName(r.Material.Place, err, "brinehead catalogue materials")
+			}
+		}
+	} else if !own.Given && r.Length.Value > 0 {
+		b.supply(r.Run.Value, "roughness", "0 mm", "none given: taken as smooth")
+	}
+	b.walls = append(b.walls, wall)
+	return roughness
 }
 
 // ratingDensity is that of fresh water at 20 degC under one atmosphere, kg/m3, in which a rated drop is taken to have
 // been measured where the row does not say (IAPWS-IF97; held by a test).
 const ratingDensity = 998.2060935
 
-func (b *builder) fitting(r FittingRow) hydraulics.Fitting {
-	element := r.Tag
-	f := hydraulics.Fitting{
+// fitting returns a row's fitting in its pipe, and whether it shuts the run. A loss that the row gives is taken; else that
+// of the catalogue's fitting of its name.
+func (b *builder) fitting(r FittingRow, pipe hydraulics.Pipe) (f hydraulics.Fitting, shut bool) {
+	opening := b.number(r.Tag, "opening", r.Opening)
+	f = hydraulics.Fitting{
 		Name: r.Fitting.Value, Tag: r.Tag.Value, Count: int(r.Count.Or(1)),
-		Coefficient:  hydraulics.Coefficient{K: b.number(element, "k", r.K).Or(0), Bore: r.Bore.Or(0)},
-		Kv:           b.number(element, "kv", r.Kv).Or(0),
+		Coefficient:  hydraulics.Coefficient{K: b.number(r.Tag, "k", r.K).Or(0), Bore: r.Bore.Or(0)},
+		Kv:           b.number(r.Tag, "kv", r.Kv).Or(0),
 		RatedFlow:    r.RatedFlow.Or(0),
-		RatedDrop:    b.number(element, "rated drop", r.RatedDrop).Or(0),
+		RatedDrop:    b.number(r.Tag, "rated drop", r.RatedDrop).Or(0),
 		RatedDensity: r.RatedDensity.Or(ratingDensity),
 		Exponent:     r.Exponent.Or(0),
-		Blockage:     b.number(element, "blockage", r.Blockage).Or(0),
+		Blockage:     b.number(r.Tag, "blockage", r.Blockage).Or(0),
 		NonReturn:    isNonReturn(r.Fitting.Value),
 	}
-	if !r.K.Given && !r.Kv.Given && !r.RatedFlow.Given {
-		b.fault(r.Fitting.Place, r.Fitting.Value, "a loss: k, kv [m3/h], or rated flow [m3/h] with rated drop [bar]", "")
+	entry, unknown := hydraulics.FindFitting(r.Fitting.Value)
+	f.NonReturn = f.NonReturn || entry.NonReturn
+	if r.K.Given || r.Kv.Given || r.RatedFlow.Given {
+		if entry.Exponent != 0 && r.RatedFlow.Given && !r.Exponent.Given {
+			f.Exponent = entry.Exponent
+			b.supply(nameOf(r), "exponent", fmt.Sprintf("%g", entry.Exponent), entry.Name+": "+entry.Source)
+		}
+		if opening.Given && opening.Value != 0 && opening.Value != 1 {
+			b.fault(opening.Place, fmt.Sprintf("%g %%", opening.Value*100), "0 or 100 %: the row gives the loss itself, and no table says how it grows as the valve closes",
+				"leave the loss out for the catalogue's valve, or set k or kv in the condition")
+		}
+		return f, opening.Given && opening.Value == 0
 	}
-	return f
+	if unknown != nil {
+		b.unknownName(r.Fitting.Place, unknown, "brinehead catalogue fittings")
+		return f, false
+	}
+	d := hydraulics.BareDimensions(pipe.ClearBore(), pipe.Roughness)
+	for _, set := range []struct {
+		to   *float64
+		from Number
+	}{{&d.Angle, r.Angle}, {&d.RadiusRatio, r.RadiusRatio}, {&d.SecondBore, r.SecondBore}, {&d.Opening, opening}, {&d.OpenArea, r.OpenArea},
+		{&d.Hole, r.Hole}, {&d.Pitch, r.Pitch}, {&d.FaceArea, r.FaceArea}, {&d.AreaRatio, r.AreaRatio}, {&d.Mesh, r.Mesh}, {&d.Cuts, r.Cuts}, {&d.Length, r.Length}} {
+		if set.from.Given {
+			*set.to = set.from.Value
+		}
+	}
+	coefficient, err := entry.Coefficient(d)
+	switch {
+	case errors.Is(err, hydraulics.ErrShut):
+		return f, true
+	case err != nil:
+		b.fault(r.Fitting.Place, quoted(r.Fitting.Value), "dimensions its loss can be worked from: "+err.Error(), "brinehead catalogue fittings --find \""+entry.Name+"\" says what it needs")
+		return f, false
+	}
+	f.Coefficient = coefficient
+	b.supply(nameOf(r), "loss coefficient", fmt.Sprintf("k %.4g", coefficient.K), fmt.Sprintf("%s: %s; %s; mark %s; scatter %.0f %%", entry.Name, entry.Method, entry.Source, entry.Mark, entry.Scatter*100))
+	return f, false
+}
+
+// nameOf names a fitting for a reader: by its tag, or by its run and name.
+func nameOf(r FittingRow) string {
+	if r.Tag.Given() {
+		return r.Tag.Value
+	}
+	return r.Run.Value + ": " + r.Fitting.Value
 }
 
 // isNonReturn says whether a fitting's name is that of a valve that passes water one way only.

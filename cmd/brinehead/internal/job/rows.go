@@ -62,6 +62,8 @@ type PointRow struct {
 	Level     Number `csv:"level"`
 	Pressure  Number `csv:"pressure"`
 	Draw      Number `csv:"draw"`
+	Straight  Text   `csv:"straight"`
+	TeeAngle  Number `csv:"tee angle"`
 	Note      Text   `csv:"note"`
 }
 
@@ -79,6 +81,7 @@ type RunRow struct {
 	Fouling     Number `csv:"fouling"`
 	State       Text   `csv:"state"`
 	Temperature Number `csv:"temperature"`
+	HighPoint   Number `csv:"high point"`
 	Note        Text   `csv:"note"`
 }
 
@@ -98,6 +101,17 @@ type FittingRow struct {
 	Blockage     Number `csv:"blockage"`
 	Opening      Number `csv:"opening"`
 	Heat         Number `csv:"heat"`
+	Angle        Number `csv:"angle"`
+	RadiusRatio  Number `csv:"radius ratio"`
+	SecondBore   Number `csv:"second bore"`
+	OpenArea     Number `csv:"open area"`
+	Hole         Number `csv:"hole"`
+	Pitch        Number `csv:"pitch"`
+	FaceArea     Number `csv:"face area"`
+	AreaRatio    Number `csv:"area ratio"`
+	Mesh         Number `csv:"mesh"`
+	Cuts         Number `csv:"cuts"`
+	Length       Number `csv:"length"`
 	Note         Text   `csv:"note"`
 }
 

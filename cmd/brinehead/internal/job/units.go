@@ -55,6 +55,8 @@ var (
 	velocity    = Quantity{"velocity", []Unit{{"m/s", nil, 1, 0}, {"ft/s", []string{"fps"}, foot, 0}}}
 	capacity    = Quantity{"flow coefficient Kv", []Unit{{"m3/h", []string{"m³/h", "m3/hr", "m³/hr"}, 1, 0}}}
 	salinity    = Quantity{"salinity", []Unit{{"g/kg", nil, 1, 0}}}
+	angle       = Quantity{"angle", []Unit{{"deg", []string{"°", "degree", "degrees"}, math.Pi / 180, 0}, {"rad", nil, 1, 0}}}
+	area        = Quantity{"area", []Unit{{"m2", []string{"m²"}, 1, 0}, {"mm2", []string{"mm²"}, 1e-6, 0}, {"cm2", []string{"cm²"}, 1e-4, 0}, {"in2", nil, inch * inch, 0}}}
 	density     = Quantity{"density", []Unit{{"kg/m3", []string{"kg/m³"}, 1, 0}}}
 	current     = Quantity{"current", []Unit{{"A", nil, 1, 0}}}
 	ratio       = Quantity{"ratio", []Unit{{"-", []string{""}, 1, 0}}}

@@ -33,6 +33,16 @@ func WriteCheckText(w io.Writer, a *study.Check, u Units) error {
 		lines = append(lines, "")
 		lines = append(lines, conditionLines(&a.Conditions[i], u, len(a.Conditions) == 1)...)
 	}
+	if len(a.Supplied) > 0 {
+		lines = append(lines, "", fmt.Sprintf("%s from catalogues and defaults, where the tables leave it open", counted(len(a.Supplied), "figure")))
+		if len(a.Conditions) == 1 {
+			for _, s := range a.Supplied {
+				lines = append(lines, wrap("  ", "    ", fmt.Sprintf("%s: %s %s [%s]", s.On, s.What, s.Figure, s.Source))...)
+			}
+		} else {
+			lines = append(lines, "(--condition NAME lists them, --out DIR writes them to supplied.csv).")
+		}
+	}
 	if len(a.Defaults) > 0 {
 		lines = append(lines, "", "Judged by default, since limits.csv names none of the kind:")
 		for _, d := range a.Defaults {
@@ -288,6 +298,16 @@ func WriteFindingsCSV(w io.Writer, a *study.Check, u Units) error {
 			t.add(word(c.Condition), f.Limit, word(f.On), t.figure(f.Value, f.Unit), t.figure(f.LimitValue, f.Unit), u.Unit(f.Unit), string(f.Verdict),
 				word(reason(f, u)), word(f.Source))
 		}
+	}
+	return t.write(w)
+}
+
+// WriteSuppliedCSV writes every figure that comes from a catalogue or a default.
+func WriteSuppliedCSV(w io.Writer, a *study.Check) error {
+	t := &csvTable{}
+	t.add("on", "what", "figure", "source")
+	for _, s := range a.Supplied {
+		t.add(word(s.On), s.What, s.Figure, word(s.Source))
 	}
 	return t.write(w)
 }

@@ -15,7 +15,7 @@ type File struct {
 	Content []byte
 }
 
-// CheckFiles makes the tables and plots of an answer: duty.csv, losses.csv, findings.csv, and for each condition with a
+// CheckFiles makes the tables and plots of an answer: duty.csv, losses.csv, findings.csv, supplied.csv, and for each condition with a
 // solution a plot of head and one of NPSH over flow, as SVG and PNG.
 func CheckFiles(a *study.Check, u Units) ([]File, error) {
 	var files []File
@@ -26,6 +26,7 @@ func CheckFiles(a *study.Check, u Units) ([]File, error) {
 		{"duty.csv", func(b *bytes.Buffer) error { return WriteDutyCSV(b, a, u) }},
 		{"losses.csv", func(b *bytes.Buffer) error { return WriteLossesCSV(b, a, u) }},
 		{"findings.csv", func(b *bytes.Buffer) error { return WriteFindingsCSV(b, a, u) }},
+		{"supplied.csv", func(b *bytes.Buffer) error { return WriteSuppliedCSV(b, a) }},
 	} {
 		var b bytes.Buffer
 		if err := t.write(&b); err != nil {

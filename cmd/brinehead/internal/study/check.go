@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"brinehead/cmd/brinehead/internal/job"
@@ -19,6 +20,7 @@ type Check struct {
 	Version    string      `json:"version"`
 	Conditions []Condition `json:"conditions"`
 	Defaults   []Default   `json:"defaults"`
+	Supplied   []Supplied  `json:"supplied"`
 
 	Failed []error `json:"-"` // *NoSolution of each condition that could not be solved
 }
@@ -36,8 +38,8 @@ type Condition struct {
 	Notes     []string  `json:"notes"`
 	Solution  Solution  `json:"solution"`
 
-	solved     *curves.Solved // nil where there is no solution
-	elevations []float64      // of the points, m
+	solved *curves.Solved // nil where there is no solution
+	built  *job.Case
 }
 
 // Water is the water of a condition.
@@ -128,13 +130,12 @@ func Checked(j *job.Job, only []string, version string) (*Check, error) {
 	limits := newLimits(j)
 	answer := &Check{Job: j.Name, Version: version, Defaults: limits.defaults}
 	for _, name := range only {
-		plant, err := j.Plant(name)
+		built, err := j.Build(name)
 		if err != nil {
 			return nil, err
 		}
-		row := j.Condition(name)
-		c := Condition{Condition: row.Condition.Value, Water: waterOf(plant), Draught: Figure(row.Draught.Or(math.NaN()))}
-		c.solved, err = plant.Solve()
+		c := Condition{Condition: built.Row.Condition.Value, Water: waterOf(built.Plant), Draught: Figure(built.Row.Draught.Or(math.NaN())), built: built}
+		c.solved, err = built.Solve()
 		if err != nil {
 			answer.Failed = append(answer.Failed, &NoSolution{c.Condition, err})
 			c.Notes = append(c.Notes, "no solution: "+err.Error())
@@ -142,10 +143,28 @@ func Checked(j *job.Job, only []string, version string) (*Check, error) {
 		} else {
 			c.report(j)
 		}
-		c.Findings = limits.judge(&c, plant, row, err)
+		c.Findings = limits.judge(&c, err)
+		answer.supply(built.Supplied)
 		answer.Conditions = append(answer.Conditions, c)
 	}
 	return answer, nil
+}
+
+// Supplied is a figure that the program has put in where the tables left it open.
+type Supplied struct {
+	On     string `json:"on"`
+	What   string `json:"what"`
+	Figure string `json:"figure"`
+	Source string `json:"source"`
+}
+
+// supply notes supplied figures, each once.
+func (a *Check) supply(figures []job.Supplied) {
+	for _, f := range figures {
+		if s := Supplied(f); !slices.Contains(a.Supplied, s) {
+			a.Supplied = append(a.Supplied, s)
+		}
+	}
 }
 
 func waterOf(p *curves.Plant) Water {

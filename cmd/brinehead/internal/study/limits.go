@@ -76,7 +76,7 @@ var limitKinds = []limitKind{
 		return c.Points[i].GaugePressure, "the point is cut off by shut runs"
 	}},
 	{"minimum immersion", "m", 1, true, true, []string{"seas"}, func(c *Condition, _ string, i int) (Figure, string) {
-		return c.Draught - Figure(c.elevations[i]), "the condition gives no draught"
+		return c.Draught - Figure(c.built.Elevations[i]), "the condition gives no draught"
 	}},
 	{"maximum outlet temperature", "degC", 1, false, false, []string{"tags"}, func(c *Condition, _ string, i int) (Figure, string) {
 		return c.Fittings[i].Outlet, "no heat [kW] is given for it, or no water flows"
@@ -125,7 +125,8 @@ const (
 var defaultSources = map[string]string{
 	"NPSH margin":                            practice + ": 0.6 m from 70 to 120 % of best-efficiency flow, 1.0 m outside (after ANSI/HI 9.6.1-2012, from a summary)",
 	"NPSH ratio":                             practice + ": 1.1 from 70 to 120 % of best-efficiency flow, 1.2 outside (after ANSI/HI 9.6.1-2012, from a summary)",
-	"maximum velocity":                       practice + ": 3.0 m/s in sea-water and fresh-water pipes of engines (an engine maker's project guide)",
+	"maximum velocity":                       practice + ": what the run's material bears in sea water by the catalogue, or 3.0 m/s (an engine maker's project guide)",
+	"minimum velocity":                       practice + ": what the run's material needs in sea water by the catalogue, where that says",
 	"least share of best-efficiency flow":    practice + ": 70 %, preferred region (after ANSI/HI 9.6.3-2012, from an article)",
 	"greatest share of best-efficiency flow": practice + ": 120 %, preferred region (after ANSI/HI 9.6.3-2012, from an article)",
 	"maximum shaft power":                    "the motor's rating in pumps.csv",
@@ -168,29 +169,28 @@ type Default struct {
 }
 
 // judge judges every limit in a condition. A condition without a solution has every limit not judged.
-func (l *limits) judge(c *Condition, plant *curves.Plant, row job.ConditionRow, failure error) []Finding {
-	c.elevations = plant.Elevations
+func (l *limits) judge(c *Condition, failure error) []Finding {
 	var findings []Finding
 	for _, k := range limitKinds {
 		for _, lim := range l.list {
-			if lim.name != k.name || lim.condition != "" && !strings.EqualFold(lim.condition, row.Condition.Value) {
+			if lim.name != k.name || lim.condition != "" && !strings.EqualFold(lim.condition, c.Condition) {
 				continue
 			}
-			findings = append(findings, k.judge(c, plant, lim, failure)...)
+			findings = append(findings, k.judge(c, lim, failure)...)
 		}
 	}
 	return findings
 }
 
 // judge judges one limit on each thing it is on.
-func (k limitKind) judge(c *Condition, plant *curves.Plant, lim limit, failure error) []Finding {
+func (k limitKind) judge(c *Condition, lim limit, failure error) []Finding {
 	var findings []Finding
 	for _, kind := range k.on {
-		for i, name := range namesOf(kind, plant) {
+		for i, name := range namesOf(kind, c.built.Plant) {
 			if name == "" || lim.on != "*" && !strings.EqualFold(lim.on, name) {
 				continue
 			}
-			if f, applies := k.finding(c, plant, lim, kind, i, failure); applies {
+			if f, applies := k.finding(c, lim, kind, i, failure); applies {
 				f.On = name
 				findings = append(findings, f)
 			}
@@ -237,9 +237,9 @@ func namesOf(kind string, plant *curves.Plant) []string {
 
 // finding judges one limit on one thing. It does not apply to an idle pump or a shut run, unless the limit was set for
 // this very thing in this very condition: then it is not judged, with the reason.
-func (k limitKind) finding(c *Condition, plant *curves.Plant, lim limit, kind string, i int, failure error) (f Finding, applies bool) {
+func (k limitKind) finding(c *Condition, lim limit, kind string, i int, failure error) (f Finding, applies bool) {
 	f = Finding{Limit: k.name, Value: unknown, LimitValue: Figure(lim.value), Unit: k.unit, Verdict: NotJudged, Source: lim.source}
-	asked := lim.on != "*" && lim.condition != ""
+	asked, plant := lim.on != "*" && lim.condition != "", c.built.Plant
 	if kind == "pumps" && !plant.Pumps[i].Running {
 		f.Reason = "the pump does not run in this condition"
 		return f, asked
@@ -252,7 +252,7 @@ func (k limitKind) finding(c *Condition, plant *curves.Plant, lim limit, kind st
 		return f, false // a standby branch at rest has no velocity to keep
 	}
 	if lim.byDefault {
-		lim.value = k.defaultValue(c, plant, i, failure)
+		lim.value, f.Source = k.defaultValue(c, i, failure)
 		if f.LimitValue = Figure(lim.value); !f.LimitValue.Known() {
 			return f, false // no motor rating: nothing to hold the power against
 		}
@@ -307,17 +307,25 @@ func (f Finding) Origin() string {
 	return "default"
 }
 
-// defaultValue returns the default of a limit for a pump or a run, in the unit of findings.
-func (k limitKind) defaultValue(c *Condition, plant *curves.Plant, i int, failure error) float64 {
+// defaultValue returns the default of a limit for a pump or a run, in the unit of findings, and its source; NaN where
+// there is none.
+func (k limitKind) defaultValue(c *Condition, i int, failure error) (value float64, source string) {
+	source = defaultSources[k.name]
 	switch k.name {
 	case "maximum velocity":
-		return defaultVelocity
+		if b := c.built.Walls[i].Greatest; b.Known() {
+			return b.Velocity, boundSource(c.built.Walls[i].Material, b)
+		}
+		return defaultVelocity, source
+	case "minimum velocity":
+		b := c.built.Walls[i].Least
+		return b.Velocity, boundSource(c.built.Walls[i].Material, b)
 	case "least share of best-efficiency flow":
-		return leastShare
+		return leastShare, source
 	case "greatest share of best-efficiency flow":
-		return greatestShare
+		return greatestShare, source
 	case "maximum shaft power":
-		return plant.Pumps[i].Motor / 1e3
+		return c.built.Pumps[i].Motor / 1e3, source
 	}
 	preferred := false // an unknown share counts as outside: the stricter rule
 	if failure == nil {
@@ -326,13 +334,18 @@ func (k limitKind) defaultValue(c *Condition, plant *curves.Plant, i int, failur
 	}
 	switch {
 	case k.name == "NPSH margin" && preferred:
-		return 0.6
+		return 0.6, source
 	case k.name == "NPSH margin":
-		return 1.0
+		return 1.0, source
 	case preferred:
-		return 1.1
+		return 1.1, source
 	}
-	return 1.2
+	return 1.2, source
+}
+
+// boundSource says where a velocity that a material bears comes from.
+func boundSource(material string, b hydraulics.Bound) string {
+	return fmt.Sprintf("%s in sea water: %s; %s", material, b.Source, b.Mark.Meaning())
 }
 
 // whyUnknown gives the reason of a figure that is not known: the running pump that is off its curve where there is

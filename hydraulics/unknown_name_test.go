@@ -38,25 +38,8 @@ func TestNameWords(t *testing.T) {
 	}
 }
 
-func TestEditDistance(t *testing.T) {
-	for _, c := range []struct {
-		a, b string
-		want int
-	}{
-		{"", "", 0}, {"pipe", "pipe", 0}, {"", "pipe", 4}, {"pipe", "pip", 1}, {"pipe", "pipes", 1}, {"pipe", "pope", 1},
-		{"pipe", "ippe", 1}, {"sgp", "spg", 1}, {"abcd", "dcba", 3}, {"ca", "abc", 3}, // 2 if a letter could be touched twice
-	} {
-		if got := editDistance([]rune(c.a), []rune(c.b)); got != c.want {
-			t.Errorf("%q to %q: %d, want %d", c.a, c.b, got, c.want)
-		}
-		if got := editDistance([]rune(c.b), []rune(c.a)); got != c.want {
-			t.Errorf("%q to %q: %d, want %d", c.b, c.a, got, c.want)
-		}
-	}
-}
-
 func TestNearestNames(t *testing.T) {
-	known := []spelling{{"copper", "copper"}, {"drawn copper", "copper"}, {"coppers", "coppers"}, {"brass", "brass"},
+	known := []wayToWrite{{"copper", "copper"}, {"drawn copper", "copper"}, {"coppers", "coppers"}, {"brass", "brass"},
 		{"cupper", "cupper"}, {"capper", "capper"}, {"Copper-Nickel", "alloy"}}
 	for wanted, want := range map[string][]string{
 		"COPPER":        {"copper", "coppers", "cupper"}, // three at most, each once, ties as they stand in the list

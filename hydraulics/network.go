@@ -11,7 +11,16 @@ type Network struct {
 	Points    []Point
 	Runs      []Run
 	Pumps     []PumpLink
+	Tees      []TeeLink
 	Viscosity float64 // kinematic viscosity of the water, m2/s
+}
+
+// TeeLink is a tee whose losses follow the split of its flow, at a point where just three runs meet. The head of the point
+// is that at the end of the first leg.
+type TeeLink struct {
+	Point                 int
+	First, Second, Branch int // indices in Network.Runs: the two that go straight through, and the one at their side
+	Law                   TeeLaw
 }
 
 // Point is a place where runs and pumps meet, or where the network meets the outside.
@@ -132,6 +141,13 @@ func (n *Network) Check() error {
 			return fmt.Errorf("pump %s: stands between no two points, or has no curve", p.Name)
 		}
 		joined.join(p.From, p.To)
+	}
+	for _, t := range n.Tees {
+		for _, k := range []int{t.First, t.Second, t.Branch} {
+			if !known(t.Point) || !(0 <= k && k < len(n.Runs)) || n.Runs[k].From != t.Point && n.Runs[k].To != t.Point {
+				return fmt.Errorf("a tee without three runs that meet in its point")
+			}
+		}
 	}
 	held := make([]bool, len(n.Points))
 	for i, p := range n.Points {

@@ -36,6 +36,7 @@ type Solver struct {
 	shut                     []bool    // by link: passes nothing in this solution
 	head, draw               []float64 // by point
 	held                     []bool    // by point: scratch of isolate
+	tees                     *teeSolver
 }
 
 // link is a run or a pump, ready to be solved.
@@ -85,6 +86,9 @@ func NewSolver(n *Network) (*Solver, error) {
 	s.number()
 	for i, l := range s.links {
 		s.flow[i] = l.start
+	}
+	if len(n.Tees) > 0 {
+		s.tees = newTeeSolver(s)
 	}
 	return s, nil
 }
@@ -157,6 +161,7 @@ func (s *Solver) number() {
 type Solution struct {
 	Heads     []float64 // total head of each point, m; NaN where shut valves cut the point off from every fixed head
 	RunFlows  []float64 // m3/s, positive from From to To
+	TeeLosses []float64 // by run, m: what the tees at its ends take from a flow from From to To; below 0 where they give
 	PumpFlows []float64 // m3/s; 0 for an idle pump and for one held shut by its non-return
 
 	Rounds       int     // Newton steps taken
@@ -199,37 +204,57 @@ func (s *Solver) SolveForced(out *Solution, pump int, flow float64) error {
 func (s *Solver) solve(out *Solution, forced int, forcedFlow float64) error {
 	n := s.network
 	for i, p := range n.Points {
-		s.draw[i], s.head[i] = p.Draw, p.Head
+		s.draw[i] = p.Draw
+	}
+	if forced >= 0 {
+		s.draw[n.Pumps[forced].From] += forcedFlow
+		s.draw[n.Pumps[forced].To] -= forcedFlow
+	}
+	var rounds int
+	var err error
+	if s.tees == nil {
+		rounds, err = s.settle(forced)
+	} else {
+		rounds, err = s.settleTees(forced)
+	}
+	if err != nil {
+		return err
+	}
+	s.report(out, forced, forcedFlow)
+	out.Rounds = rounds
+	return nil
+}
+
+// settle solves for flows and heads, and shuts the one-way links that hold water back. It returns the rounds it took.
+func (s *Solver) settle(forced int) (rounds int, err error) {
+	n := s.network
+	for i, p := range n.Points {
+		s.head[i] = p.Head
 	}
 	for i, r := range n.Runs {
 		s.shut[i] = r.Shut
 	}
 	for i, p := range n.Pumps {
-		k := len(n.Runs) + i
-		s.shut[k] = !p.Running
-		if i == forced {
-			s.shut[k] = true
-			s.draw[p.From] += forcedFlow
-			s.draw[p.To] -= forcedFlow
+		s.shut[len(n.Runs)+i] = !p.Running || i == forced
+	}
+	for k := range s.links { // a flow of nothing has no slope to start from
+		if math.Abs(s.flow[k]) < 1e-3*s.links[k].start {
+			s.flow[k] = s.links[k].start
 		}
 	}
-	rounds := 0
 	for {
 		if err := s.isolate(); err != nil {
-			return err
+			return rounds, err
 		}
 		if err := s.iterate(&rounds); err != nil {
-			return err
+			return rounds, err
 		}
 		k := s.mostHeldBack()
 		if k < 0 {
-			break
+			return rounds, nil
 		}
 		s.shut[k] = true
 	}
-	s.report(out, forced, forcedFlow)
-	out.Rounds = rounds
-	return nil
 }
 
 // isolate finds the points that shut links cut off from every fixed head. Such points have no head and their links
@@ -617,6 +642,14 @@ func (s *Solver) report(out *Solution, forced int, forcedFlow float64) {
 	out.PumpFlows = append(out.PumpFlows[:0], s.flow[runs:]...)
 	if forced >= 0 {
 		out.PumpFlows[forced] = forcedFlow
+	}
+	out.TeeLosses = out.TeeLosses[:0]
+	for k := range runs {
+		loss := 0.0
+		if s.tees != nil {
+			loss = s.links[k].lift - s.tees.lift[k]
+		}
+		out.TeeLosses = append(out.TeeLosses, loss)
 	}
 	out.HeadResidual, out.MassResidual, out.Worst = 0, 0, ""
 	greatestFlow := 0.0

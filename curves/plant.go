@@ -14,6 +14,7 @@ type Plant struct {
 	Network    hydraulics.Network // its PumpLinks are made from Pumps
 	Elevations []float64          // of the points, m above the keel
 	SeaInlets  []bool             // by point: an inlet from the sea
+	Overboards []bool             // by point: an outlet to the sea
 	Pumps      []Pump
 	Water      fluids.State
 	Atmosphere float64 // Pa, absolute

@@ -175,7 +175,7 @@ func TestUnknownIsNoPass(t *testing.T) {
 
 // Bad input and bad command lines: exit code 2, one clear message on stderr, nothing on stdout, nothing written.
 func TestRefusals(t *testing.T) {
-	bad := copyJob(t, seawater, [3]string{"runs.csv", "CROSSOVER,7.5,", "CROSSOVER,-7.5,"}, [3]string{"points.csv", "chests\n", "chests\nX,junction,O.5,\n"})
+	bad := copyJob(t, seawater, [3]string{"runs.csv", "CROSSOVER,7.5,", "CROSSOVER,-7.5,"}, [3]string{"points.csv", "chests\n", "chests\nX,junction,O.5,,\n"})
 	full := t.TempDir()
 	file := filepath.Join(full, "file")
 	if err := os.WriteFile(file, nil, 0o644); err != nil {

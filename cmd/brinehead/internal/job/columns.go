@@ -52,6 +52,7 @@ var tables = []table{
 		number("pressure", pressure, between(-1.1e5, 1e8)),
 		number("draw", flow, between(-100, 100)),
 		text("straight"),
+		word("siphon", "yes", "no"),
 		number("tee angle", angle, between(0, math.Pi)),
 		text("note"),
 	}},
@@ -123,8 +124,8 @@ var tables = []table{
 	}},
 	{name: limitsTable, columns: []column{
 		word("limit", "minimum flow", "maximum flow", "NPSH margin", "NPSH ratio", "maximum velocity", "minimum velocity", "maximum shaft power",
-			"least share of best-efficiency flow", "greatest share of best-efficiency flow", "minimum pressure", "minimum immersion",
-			"maximum outlet temperature").must(),
+			"least share of best-efficiency flow", "greatest share of best-efficiency flow", "minimum pressure", "minimum absolute pressure",
+			"minimum immersion", "maximum outlet temperature").must(),
 		text("on").must(),
 		column{name: "value", quantity: plain, within: anyNumber, perRow: true}.must(),
 		text("unit").must(), text("condition"), text("note"),
@@ -142,7 +143,7 @@ var tables = []table{
 var limitQuantities = map[string]Quantity{
 	"minimum flow": flow, "maximum flow": flow, "npsh margin": length, "npsh ratio": ratio, "maximum velocity": velocity,
 	"minimum velocity": velocity, "maximum shaft power": power, "least share of best-efficiency flow": share,
-	"greatest share of best-efficiency flow": share, "minimum pressure": pressure, "minimum immersion": length,
+	"greatest share of best-efficiency flow": share, "minimum pressure": pressure, "minimum absolute pressure": pressure, "minimum immersion": length,
 	"maximum outlet temperature": temperature,
 }
 

@@ -141,6 +141,8 @@ type Case struct {
 	Row      ConditionRow
 	Supplied []Supplied
 	Walls    []Wall // by run
+
+	HighPoints []float64 // by run, m above the keel; NaN where the table gives none
 }
 
 // Supplied is a figure that comes from a catalogue or a default, not from the tables.
@@ -168,6 +170,8 @@ func (j *Job) Build(name string) (*Case, error) {
 	b.water()
 	b.points()
 	b.runs()
+	b.siphons()
+	b.tees()
 	b.pumps()
 	if err := b.faults.Err(); err != nil {
 		return nil, err
@@ -177,18 +181,19 @@ func (j *Job) Build(name string) (*Case, error) {
 		return nil, Faults{{Place: Place{File: "runs.csv"}, Found: err.Error(),
 			Want: fmt.Sprintf("a circuit that can be solved (condition %s, line %d of conditions.csv)", row.Condition.Value, place.Line)}}
 	}
-	return &Case{b.plant, row, b.supplied, b.walls}, nil
+	return &Case{b.plant, row, b.supplied, b.walls, b.highPoints}, nil
 }
 
 // builder gathers the plant of one condition and the faults met on the way.
 type builder struct {
-	job       *Job
-	condition ConditionRow
-	plant     *curves.Plant
-	point     map[string]int
-	supplied  []Supplied
-	walls     []Wall
-	faults    Faults
+	job        *Job
+	condition  ConditionRow
+	plant      *curves.Plant
+	point      map[string]int
+	supplied   []Supplied
+	walls      []Wall
+	highPoints []float64
+	faults     Faults
 }
 
 func (b *builder) supply(on, what, figure, source string) {
@@ -270,6 +275,7 @@ func (b *builder) points() {
 		b.plant.Network.Points = append(b.plant.Network.Points, p)
 		b.plant.Elevations = append(b.plant.Elevations, elevation)
 		b.plant.SeaInlets = append(b.plant.SeaInlets, fold(r.Kind.Value) == "sea")
+		b.plant.Overboards = append(b.plant.Overboards, fold(r.Kind.Value) == "overboard")
 	}
 }
 
@@ -301,6 +307,79 @@ func (b *builder) runs() {
 			}
 		}
 		b.plant.Network.Runs = append(b.plant.Network.Runs, run)
+		b.highPoints = append(b.highPoints, r.HighPoint.Or(math.NaN()))
+		if from, to := b.plant.Elevations[run.From], b.plant.Elevations[run.To]; r.HighPoint.Given && r.HighPoint.Value < math.Max(from, to) {
+			b.fault(r.HighPoint.Place, fmt.Sprintf("%g m", r.HighPoint.Value), fmt.Sprintf("at least the elevations of the run's ends, %g and %g m", from, to), "")
+		}
+	}
+}
+
+// siphons takes the credit of a siphon away where points.csv says so: the water then falls from the high point of the
+// overboard line, and the pump must lift it there.
+func (b *builder) siphons() {
+	for i, r := range b.job.Tables.Points {
+		if fold(r.Siphon.Value) != "no" {
+			continue
+		}
+		for k, run := range b.plant.Network.Runs {
+			if run.From == i || run.To == i {
+				p := &b.plant.Network.Points[i]
+				if b.highPoints[k] > p.Head { // false for NaN
+					p.Head = b.highPoints[k]
+				}
+			}
+		}
+	}
+}
+
+// tees makes the tees of the points that name the two runs that go straight through.
+func (b *builder) tees() {
+	runs := map[string]int{}
+	known := map[string]element{}
+	for k, r := range b.job.Tables.Runs {
+		runs[fold(r.Run.Value)] = k
+		known[fold(r.Run.Value)] = element{name: r.Run.Value}
+	}
+	for i, r := range b.job.Tables.Points {
+		if !r.Straight.Given() {
+			continue
+		}
+		var meet []int
+		for k, run := range b.plant.Network.Runs {
+			if run.From == i || run.To == i {
+				meet = append(meet, k)
+			}
+		}
+		var straight []int
+		for _, name := range splitNames(r.Straight, known) {
+			if k, has := runs[fold(name.Value)]; has && slices.Contains(meet, k) {
+				straight = append(straight, k)
+			}
+		}
+		if len(meet) != 3 || len(straight) != 2 || straight[0] == straight[1] {
+			b.fault(r.Straight.Place, quoted(r.Straight.Value), fmt.Sprintf("two of the runs that meet in %s, where just three do (%d here)", r.Point.Value, len(meet)), "")
+			continue
+		}
+		side := meet[0] + meet[1] + meet[2] - straight[0] - straight[1]
+		bore := func(k int) float64 { return b.plant.Network.Runs[k].Pipe.ClearBore() }
+		if a, c := bore(straight[0]), bore(straight[1]); math.IsNaN(a + c + bore(side)) {
+			continue // told already
+		} else if math.Abs(a-c) > 0.02*a {
+			b.fault(r.Straight.Place, quoted(r.Straight.Value), fmt.Sprintf("two runs of one bore, not of %.1f and %.1f mm", a*1e3, c*1e3), "a reducer beside the tee is a fitting of its own run")
+			continue
+		}
+		tee := hydraulics.Tee{Bore: bore(straight[0]), Branch: math.Min(bore(side), bore(straight[0])), Angle: r.TeeAngle.Or(math.Pi / 2)}
+		law, err := tee.Law()
+		if err != nil || bore(side) > 1.02*tee.Bore {
+			if err == nil {
+				err = fmt.Errorf("the branch has %.1f mm, the straight runs %.1f mm", bore(side)*1e3, tee.Bore*1e3)
+			}
+			b.fault(r.Straight.Place, quoted(r.Straight.Value), "a tee that can be worked: "+err.Error(), "")
+			continue
+		}
+		b.supply(r.Point.Value, "tee", fmt.Sprintf("%.0f deg, branch %.1f on %.1f mm", tee.Angle*180/math.Pi, tee.Branch*1e3, tee.Bore*1e3),
+			"losses by the split of flow: A. Gardel (1957), formulas from memory; scatter 35 % (Hydraulic Institute, Engineering Data Book)")
+		b.plant.Network.Tees = append(b.plant.Network.Tees, hydraulics.TeeLink{Point: i, First: straight[0], Second: straight[1], Branch: side, Law: law})
 	}
 }
 
@@ -391,6 +470,9 @@ func (b *builder) fitting(r FittingRow, pipe hydraulics.Pipe) (f hydraulics.Fitt
 			f.Exponent = entry.Exponent
 			b.supply(nameOf(r), "exponent", fmt.Sprintf("%g", entry.Exponent), entry.Name+": "+entry.Source)
 		}
+		if r.K.Given && entry.Name == "orifice plate" {
+			b.orificeHole(r, f, pipe)
+		}
 		if opening.Given && opening.Value != 0 && opening.Value != 1 {
 			b.fault(opening.Place, fmt.Sprintf("%g %%", opening.Value*100), "0 or 100 %: the row gives the loss itself, and no table says how it grows as the valve closes",
 				"leave the loss out for the catalogue's valve, or set k or kv in the condition")
@@ -422,6 +504,17 @@ func (b *builder) fitting(r FittingRow, pipe hydraulics.Pipe) (f hydraulics.Fitt
 	f.Coefficient = coefficient
 	b.supply(nameOf(r), "loss coefficient", fmt.Sprintf("k %.4g", coefficient.K), fmt.Sprintf("%s: %s; %s; mark %s; scatter %.0f %%", entry.Name, entry.Method, entry.Source, entry.Mark, entry.Scatter*100))
 	return f, false
+}
+
+// orificeHole works out the hole of an orifice plate whose loss the row gives: the plate to be made.
+func (b *builder) orificeHole(r FittingRow, f hydraulics.Fitting, pipe hydraulics.Pipe) {
+	bore := pipe.ClearBore()
+	hole, err := hydraulics.OrificeHole(f.Coefficient.K, bore, hydraulics.OrificeReynolds)
+	if err != nil {
+		b.fault(r.K.Place, fmt.Sprintf("%g", f.Coefficient.K), "the loss of an orifice plate that can be made: "+err.Error(), "give it another name to use the loss as it stands")
+		return
+	}
+	b.supply(nameOf(r), "hole for its k", fmt.Sprintf("%.1f mm", hole*1e3), fmt.Sprintf("orifice plate with a sharp edge in a bore of %.1f mm: ISO 5167-2:2003, 5.4.3, at Reynolds number %g", bore*1e3, hydraulics.OrificeReynolds))
 }
 
 // nameOf names a fitting for a reader: by its tag, or by its run and name.

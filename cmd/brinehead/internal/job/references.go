@@ -35,6 +35,10 @@ func (r *reader) references() {
 			r.fault(cmp.Or(row.Level, row.Pressure).Place, "a level or pressure at a "+kind+" point", "them at a tank only", "")
 		} else if kind != "junction" && row.Draw.Given {
 			r.fault(row.Draw.Place, "a draw at a "+kind+" point", "it at a junction only", "")
+		} else if kind != "junction" && row.Straight.Given() {
+			r.fault(row.Straight.Place, "a tee at a "+kind+" point", "it at a junction only", "")
+		} else if kind != "overboard" && row.Siphon.Given() {
+			r.fault(row.Siphon.Place, "a siphon at a "+kind+" point", "it at an overboard only", "")
 		}
 	}
 	for _, row := range t.Runs {

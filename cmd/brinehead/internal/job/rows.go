@@ -64,6 +64,7 @@ type PointRow struct {
 	Draw      Number `csv:"draw"`
 	Straight  Text   `csv:"straight"`
 	TeeAngle  Number `csv:"tee angle"`
+	Siphon    Text   `csv:"siphon"`
 	Note      Text   `csv:"note"`
 }
 

@@ -274,14 +274,23 @@ func WriteDutyCSV(w io.Writer, a *study.Check, u Units) error {
 func WriteLossesCSV(w io.Writer, a *study.Check, u Units) error {
 	t := &csvTable{units: u}
 	t.add("condition", "run", "tag", "element", t.unit("flow", "m3/h"), t.unit("velocity", "m/s"), "Reynolds number [-]", "friction factor [-]",
-		t.unit("loss", "m"), "regime")
+		t.unit("loss", "m"), "regime", t.unit("lowest absolute pressure", "bar"), t.unit("margin to boiling", "m"))
 	for _, c := range a.Conditions {
 		for _, r := range c.Runs {
 			t.add(word(c.Condition), word(r.Run), "", "pipe", t.figure(r.Flow, "m3/h"), t.figure(r.Velocity, "m/s"), t.figure(r.Reynolds, ""),
-				t.figure(r.FrictionFactor, ""), t.figure(r.PipeLoss, "m"), r.Regime)
+				t.figure(r.FrictionFactor, ""), t.figure(r.PipeLoss, "m"), r.Regime,
+				t.figure(r.LowestPressure, "bar"), t.figure(r.VapourMargin, "m"))
+			for _, extra := range []struct {
+				name string
+				loss study.Figure
+			}{{"tee", r.TeeLoss}, {"weight of its own water", r.Buoyancy}} {
+				if extra.loss.Known() && extra.loss != 0 {
+					t.add(word(c.Condition), word(r.Run), "", extra.name, t.figure(r.Flow, "m3/h"), "", "", "", t.figure(extra.loss, "m"), "", "", "")
+				}
+			}
 			for _, f := range c.Fittings {
 				if f.Run == r.Run {
-					t.add(word(c.Condition), word(r.Run), word(f.Tag), word(f.Fitting), t.figure(r.Flow, "m3/h"), "", "", "", t.figure(f.Loss, "m"), "")
+					t.add(word(c.Condition), word(r.Run), word(f.Tag), word(f.Fitting), t.figure(r.Flow, "m3/h"), "", "", "", t.figure(f.Loss, "m"), "", "", "")
 				}
 			}
 		}

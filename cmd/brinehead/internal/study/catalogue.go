@@ -171,7 +171,7 @@ func markNotes([][]string) (notes []string) {
 }
 
 func limitRows() (rows [][]string) {
-	defaults := map[string]string{"NPSH margin": "0.6 or 1.0", "NPSH ratio": "1.1 or 1.2", "maximum velocity": "by material, or 3.0", "minimum velocity": "by material",
+	defaults := map[string]string{"NPSH margin": "0.6 or 1.0", "NPSH ratio": "1.1 or 1.2", "maximum velocity": "by material, or 3.0", "minimum velocity": "by material", "minimum absolute pressure": "0.3",
 		"least share of best-efficiency flow": "70", "greatest share of best-efficiency flow": "120", "maximum shaft power": "the motor's rating"}
 	for _, k := range limitKinds {
 		rows = append(rows, []string{k.name, strings.Join(k.on, ", "), k.unit, defaults[k.name], defaultSources[k.name]})

@@ -38,8 +38,9 @@ type Condition struct {
 	Notes     []string  `json:"notes"`
 	Solution  Solution  `json:"solution"`
 
-	solved *curves.Solved // nil where there is no solution
-	built  *job.Case
+	solved  *curves.Solved // nil where there is no solution
+	built   *job.Case
+	remarks []string // notes that give figures, kept for a sound solution
 }
 
 // Water is the water of a condition.
@@ -78,7 +79,10 @@ type Run struct {
 	FrictionFactor Figure `json:"friction_factor"`
 	PipeLoss       Figure `json:"pipe_loss_m"`
 	FittingLoss    Figure `json:"fitting_loss_m"`
-	Buoyancy       Figure `json:"buoyancy_m"` // taken by the weight of the run's own water; below 0 where it drives the flow
+	Buoyancy       Figure `json:"buoyancy_m"`              // taken by the weight of the run's own water; below 0 where it drives the flow
+	TeeLoss        Figure `json:"tee_loss_m"`              // taken by the tees at its ends, in the direction of the run; below 0 where they give
+	LowestPressure Figure `json:"lowest_pressure_bar_abs"` // see lowestPressure
+	VapourMargin   Figure `json:"vapour_margin_m"`         // of LowestPressure over the vapour pressure
 	Regime         string `json:"regime"`
 	Shut           bool   `json:"shut"`
 }
@@ -135,7 +139,7 @@ func Checked(j *job.Job, only []string, version string) (*Check, error) {
 			return nil, err
 		}
 		c := Condition{Condition: built.Row.Condition.Value, Water: waterOf(built.Plant), Draught: Figure(built.Row.Draught.Or(math.NaN())), built: built}
-		c.solved, err = built.Solve()
+		c.solved, err = c.solve()
 		if err != nil {
 			answer.Failed = append(answer.Failed, &NoSolution{c.Condition, err})
 			c.Notes = append(c.Notes, "no solution: "+err.Error())
@@ -146,6 +150,11 @@ func Checked(j *job.Job, only []string, version string) (*Check, error) {
 		c.Findings = limits.judge(&c, err)
 		answer.supply(built.Supplied)
 		answer.Conditions = append(answer.Conditions, c)
+	}
+	if len(only) == len(j.Conditions()) {
+		if err := wrongWay(j, answer.Conditions).Err(); err != nil {
+			return nil, err
+		}
 	}
 	return answer, nil
 }
@@ -193,7 +202,12 @@ func (c *Condition) report(j *job.Job) {
 		c.Pumps = append(c.Pumps, p)
 	}
 	for i, r := range s.Network.Runs {
-		c.Runs = append(c.Runs, runOf(r, s.RunFlows[i], s.Network.Viscosity))
+		run := runOf(r, s.RunFlows[i], s.Network.Viscosity)
+		if !r.Shut {
+			run.TeeLoss = Figure(s.TeeLosses[i])
+			c.pressures(i, &run)
+		}
+		c.Runs = append(c.Runs, run)
 		c.Fittings = append(c.Fittings, fittingsOf(s, i)...)
 	}
 	for i, p := range s.Network.Points {
@@ -204,7 +218,7 @@ func (c *Condition) report(j *job.Job) {
 	}
 	for _, r := range c.Runs {
 		if r.Regime == hydraulics.Transitional.String() {
-			c.Notes = append(c.Notes, fmt.Sprintf("flow in %s is transitional (Re %.0f): its friction is a bridge between two laws", r.Run, float64(r.Reynolds)))
+			c.remarks = append(c.remarks, fmt.Sprintf("flow in %s is transitional (Re %.0f): its friction is a bridge between two laws", r.Run, float64(r.Reynolds)))
 		}
 		if float64(r.Reynolds) > hydraulics.GreatestReynolds {
 			sound = false
@@ -213,7 +227,9 @@ func (c *Condition) report(j *job.Job) {
 	}
 	c.Solution = Solution{true, s.Rounds, Figure(s.MassResidual), Figure(s.HeadResidual), s.Worst}
 	outlets(j, c)
-	if !sound {
+	if sound {
+		c.Notes = append(c.Notes, c.remarks...)
+	} else {
 		c.withhold()
 	}
 }
@@ -228,7 +244,8 @@ func (c *Condition) withhold() {
 	}
 	for i, r := range c.Runs {
 		if !r.Shut {
-			c.Runs[i] = Run{Run: r.Run, Flow: unknown, Velocity: unknown, Reynolds: unknown, FrictionFactor: unknown, PipeLoss: unknown, FittingLoss: unknown, Buoyancy: unknown}
+			c.Runs[i] = Run{Run: r.Run, Flow: unknown, Velocity: unknown, Reynolds: unknown, FrictionFactor: unknown, PipeLoss: unknown, FittingLoss: unknown, Buoyancy: unknown,
+				TeeLoss: unknown, LowestPressure: unknown, VapourMargin: unknown}
 		}
 	}
 	for i := range c.Fittings {
@@ -257,8 +274,79 @@ func beyondCurve(s *curves.Solved, pump int) string {
 	return text + fmt.Sprintf(" (a straight continuation, which is no data, would meet the system near %s m3/h)", short(s.PumpFlows[pump]*3600, 2))
 }
 
+// solve solves the condition. Where the siphon of an overboard line would break, by its rule, the line is taken as falling
+// from its high point, and solved anew.
+func (c *Condition) solve() (*curves.Solved, error) {
+	s, err := c.built.Solve()
+	if err != nil {
+		return nil, err
+	}
+	broken := false
+	for i, r := range s.Network.Runs {
+		over, high := c.overboardOf(r), c.built.HighPoints[i]
+		if over < 0 || r.Shut || !(high > s.Heads[over]) {
+			continue
+		}
+		pressure := lowestPressure(s, i, high)
+		text := fmt.Sprintf("%s rises to %.1f m, %.1f m over the head of %s: with its siphon the pressure there is %.2f bar absolute, the rule asks %.2f",
+			r.Name, high, high-s.Heads[over], s.Network.Points[over].Name, pressure/1e5, siphonPressure/1e5)
+		if pressure < siphonPressure {
+			s.Network.Points[over].Head = high
+			broken = true
+			text += "; no credit is taken, and the pump lifts to the high point"
+		} else {
+			text += "; the credit is taken, but a pump starts the line without it"
+		}
+		c.remarks = append(c.remarks, text)
+	}
+	if broken {
+		return c.built.Solve()
+	}
+	return s, nil
+}
+
+// siphonPressure is the least absolute pressure at the high point under which a siphon is counted on, Pa: below it air and
+// vapour come out of the water and gather there (common practice).
+const siphonPressure = 0.3e5
+
+// overboardOf returns the overboard point at an end of a run, or -1.
+func (c *Condition) overboardOf(r hydraulics.Run) int {
+	for _, i := range []int{r.From, r.To} {
+		if c.built.Overboards[i] {
+			return i
+		}
+	}
+	return -1
+}
+
+// lowestPressure returns the lowest absolute pressure in a run, Pa: at either end or at its high point (NaN for none), which
+// is taken to lie behind all of the run's losses, since where it lies is not known.
+func lowestPressure(s *curves.Solved, run int, high float64) float64 {
+	r := s.Network.Runs[run]
+	v := s.RunFlows[run] / r.Pipe.Area()
+	from, to := s.Heads[r.From]-s.Elevations[r.From], s.Heads[r.To]-s.Elevations[r.To]
+	lowest := math.Min(from, to)
+	if !math.IsNaN(high) {
+		lowest = math.Min(lowest, math.Min(s.Heads[r.From], s.Heads[r.To])-high)
+	}
+	return s.Atmosphere + (lowest-v*v/(2*fluids.Gravity))*s.Water.Density*fluids.Gravity
+}
+
+// pressures fills in the lowest pressure of a run and its margin to boiling.
+func (c *Condition) pressures(i int, run *Run) {
+	s := c.solved
+	pressure := lowestPressure(s, i, c.built.HighPoints[i])
+	run.LowestPressure = Figure(pressure / 1e5)
+	run.VapourMargin = Figure((pressure - s.Water.VapourPressure) / (s.Water.Density * fluids.Gravity))
+	high, over := c.built.HighPoints[i], c.overboardOf(s.Network.Runs[i])
+	if siphon := over >= 0 && high > s.Heads[over]; pressure < s.Atmosphere && !math.IsNaN(high) && !siphon { // a siphon has its own note
+		c.remarks = append(c.remarks, fmt.Sprintf("%s, high point %.1f m: lowest pressure %.2f bar absolute, below the atmosphere, %.1f m over boiling", run.Run, high, pressure/1e5, float64(run.VapourMargin)))
+	}
+}
+
 func runOf(r hydraulics.Run, flow, viscosity float64) Run {
-	out := Run{Run: r.Name, Flow: Figure(flow * 3600), Velocity: unknown, Reynolds: unknown, FrictionFactor: unknown, PipeLoss: unknown, FittingLoss: unknown, Buoyancy: unknown, Shut: r.Shut}
+	out := Run{Run: r.Name, Flow: Figure(flow * 3600), Velocity: unknown, Reynolds: unknown, FrictionFactor: unknown, PipeLoss: unknown, FittingLoss: unknown, Buoyancy: unknown,
+		TeeLoss: unknown, LowestPressure: unknown, VapourMargin: unknown, Shut: r.Shut}
 	if r.Shut {
 		return out
 	}
@@ -312,6 +400,44 @@ func outlets(j *job.Job, c *Condition) {
 			}
 		}
 	}
+}
+
+// wrongWay finds non-return valves that hold back water in every one of a job's conditions, where without them it would run
+// backwards through their run each time: they stand the wrong way round, or their run is written from the wrong end.
+func wrongWay(j *job.Job, conditions []Condition) job.Faults {
+	var faults job.Faults
+	for i, r := range conditions[0].built.Network.Runs {
+		backwards := r.NonReturn()
+		for k := range conditions {
+			backwards = backwards && conditions[k].runsBackwards(i)
+		}
+		if !backwards {
+			continue
+		}
+		row := j.Tables.Runs[i]
+		faults = append(faults, job.Fault{Place: row.Run.Place, Found: `"` + row.Run.Value + `"`,
+			Want: fmt.Sprintf("its non-return valve the other way round: in every condition water would run from %s to %s", row.To.Value, row.From.Value),
+			Hint: "swap from and to of the run, if the valve is drawn right"})
+	}
+	return faults
+}
+
+// runsBackwards says whether water would run backwards through a run if its non-return valve were not there.
+func (c *Condition) runsBackwards(run int) bool {
+	if c.solved == nil || c.solved.Network.Runs[run].Shut || c.solved.RunFlows[run] != 0 {
+		return false
+	}
+	without := *c.built.Plant
+	without.Network.Runs = slices.Clone(without.Network.Runs)
+	without.Network.Pumps = nil
+	r := &without.Network.Runs[run]
+	r.Fittings = slices.Clone(r.Fittings)
+	for k := range r.Fittings {
+		r.Fittings[k].NonReturn = false
+	}
+	s, err := without.Solve()
+	const passes = 1e-6 // m3/s
+	return err == nil && s.RunFlows[run] < -passes
 }
 
 // Met says whether every limit judged is met and none is left unjudged.

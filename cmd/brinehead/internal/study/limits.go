@@ -75,6 +75,9 @@ var limitKinds = []limitKind{
 	{"minimum pressure", "bar", 1e-5, true, false, []string{"points"}, func(c *Condition, _ string, i int) (Figure, string) {
 		return c.Points[i].GaugePressure, "the point is cut off by shut runs"
 	}},
+	{"minimum absolute pressure", "bar", 1e-5, true, false, []string{"runs"}, func(c *Condition, _ string, i int) (Figure, string) {
+		return c.Runs[i].LowestPressure, "a point of the run is cut off by shut runs"
+	}},
 	{"minimum immersion", "m", 1, true, true, []string{"seas"}, func(c *Condition, _ string, i int) (Figure, string) {
 		return c.Draught - Figure(c.built.Elevations[i]), "the condition gives no draught"
 	}},
@@ -129,6 +132,7 @@ var defaultSources = map[string]string{
 	"minimum velocity":                       practice + ": what the run's material needs in sea water by the catalogue, where that says",
 	"least share of best-efficiency flow":    practice + ": 70 %, preferred region (after ANSI/HI 9.6.3-2012, from an article)",
 	"greatest share of best-efficiency flow": practice + ": 120 %, preferred region (after ANSI/HI 9.6.3-2012, from an article)",
+	"minimum absolute pressure":              practice + ": 0.3 bar absolute in a run that gives a high point: below it air and vapour gather there",
 	"maximum shaft power":                    "the motor's rating in pumps.csv",
 }
 
@@ -244,12 +248,13 @@ func (k limitKind) finding(c *Condition, lim limit, kind string, i int, failure 
 		f.Reason = "the pump does not run in this condition"
 		return f, asked
 	}
-	if kind == "runs" && k.unit == "m/s" && plant.Network.Runs[i].Shut {
+	if kind == "runs" && k.unit != "m3/h" && plant.Network.Runs[i].Shut {
 		f.Reason = "the run is shut in this condition"
 		return f, asked
 	}
-	if kind == "runs" && k.least && k.unit == "m/s" && lim.on == "*" && failure == nil && c.Runs[i].Flow == 0 {
-		return f, false // a standby branch at rest has no velocity to keep
+	const atRest = 0.01 // m/s
+	if kind == "runs" && k.least && k.unit == "m/s" && lim.on == "*" && failure == nil && math.Abs(float64(c.Runs[i].Velocity)) < atRest {
+		return f, false // a standby branch or a balanced cross-connection has no velocity to keep
 	}
 	if lim.byDefault {
 		lim.value, f.Source = k.defaultValue(c, i, failure)
@@ -317,6 +322,11 @@ func (k limitKind) defaultValue(c *Condition, i int, failure error) (value float
 			return b.Velocity, boundSource(c.built.Walls[i].Material, b)
 		}
 		return defaultVelocity, source
+	case "minimum absolute pressure":
+		if math.IsNaN(c.built.HighPoints[i]) {
+			return math.NaN(), source
+		}
+		return siphonPressure / 1e5, source
 	case "minimum velocity":
 		b := c.built.Walls[i].Least
 		return b.Velocity, boundSource(c.built.Walls[i].Material, b)

@@ -1,0 +1,217 @@
+package main
+
+import (
+	"math"
+	"os"
+	"path/filepath"
+	"strings"
+	"testing"
+
+	"brinehead/cmd/brinehead/internal/study"
+)
+
+// writeJob writes a job folder of the test's own.
+func writeJob(t testing.TB, tables map[string]string) string {
+	t.Helper()
+	folder := t.TempDir()
+	for name, text := range tables {
+		if err := os.WriteFile(filepath.Join(folder, name), []byte(text), 0o644); err != nil {
+			t.Fatal(err)
+		}
+	}
+	return folder
+}
+
+// lift is a pump between a sea and an overboard, the discharge rising to a high point; more columns as the test needs.
+func lift(high, siphon string) map[string]string {
+	return map[string]string{
+		"points.csv":      "point,kind,elevation [m],siphon\nSEA,sea,1,\nS,junction,2,\nD,junction,3,\nOUT,overboard,6," + siphon + "\n",
+		"runs.csv":        "run,from,to,length [m],standard,size,material,high point [m]\nSUCTION,SEA,S,6,EN 10220 normal wall,DN200,galvanised steel,\nDISCHARGE,D,OUT,160,EN 10220 normal wall,DN200,galvanised steel," + high + "\n",
+		"fittings.csv":    "run,fitting,tag,opening [%]\nSUCTION,basket strainer,STR1,\nDISCHARGE,gate valve,V1,\nDISCHARGE,elbow,,\nDISCHARGE,exit,,\n",
+		"pumps.csv":       "pump,from,to,curve\nP1,S,D,C1\n",
+		"pump_curves.csv": "curve,flow [m3/h],head [m],efficiency [%],npshr [m]\nC1,0,20,0,1.5\nC1,100,19,55,1.7\nC1,200,16,76,2.2\nC1,300,11,74,3.2\nC1,360,7,60,4.4\n",
+		"conditions.csv":  "condition,water,temperature [degC],draught [m]\nballast,sea,20,5\n",
+		"limits.csv":      "limit,on,value,unit\nNPSH margin,*,0.5,m\nleast share of best-efficiency flow,*,10,%\ngreatest share of best-efficiency flow,*,200,%\n",
+	}
+}
+
+func only(t *testing.T, job string) study.Condition {
+	t.Helper()
+	answer, _ := checkJSON(t, job)
+	if len(answer.Conditions) != 1 {
+		t.Fatalf("%d conditions", len(answer.Conditions))
+	}
+	return answer.Conditions[0]
+}
+
+func runNamed(t *testing.T, c study.Condition, name string) study.Run {
+	t.Helper()
+	for _, r := range c.Runs {
+		if r.Run == name {
+			return r
+		}
+	}
+	t.Fatalf("no run %s", name)
+	return study.Run{}
+}
+
+// Names alone: sizes, materials and fittings come from the catalogue, each with its source, and a row's own figure goes
+// before the catalogue's.
+func TestNamesFromTheCatalogue(t *testing.T) {
+	job := writeJob(t, lift("", ""))
+	answer, _ := checkJSON(t, job)
+	text := ""
+	for _, s := range answer.Supplied {
+		text += s.On + " " + s.What + " " + s.Figure + " [" + s.Source + "]\n"
+	}
+	for _, want := range []string{
+		"SUCTION bore 206.5 mm [EN 10220 DN200 normal wall, 219.1 x 6.3 mm; ", // 219.1 - 2 x 6.3
+		"SUCTION roughness 0.15 mm [galvanised steel, in service: ",
+		"STR1 loss coefficient k 1.588", "V1 loss coefficient k 0.11", "DISCHARGE: elbow loss coefficient k 0.2", "DISCHARGE: exit loss coefficient k 1 ",
+	} {
+		if !strings.Contains(text, want) {
+			t.Errorf("no %q in\n%s", want, text)
+		}
+	}
+	tables := lift("", "")
+	tables["runs.csv"] = strings.ReplaceAll(tables["runs.csv"], "material,high", "roughness [mm],high")
+	tables["runs.csv"] = strings.ReplaceAll(tables["runs.csv"], "galvanised steel", "1.5")
+	if rough, smooth := runNamed(t, only(t, writeJob(t, tables)), "DISCHARGE"), runNamed(t, answer.Conditions[0], "DISCHARGE"); !(rough.FrictionFactor > 1.5*smooth.FrictionFactor) {
+		t.Errorf("rough %+v, smooth %+v", rough, smooth)
+	}
+}
+
+// An orifice plate goes either way: from its hole to its loss, and from the loss wanted to the hole to be made.
+func TestOrificeBothWays(t *testing.T) {
+	supplied := func(column, value string) string {
+		tables := lift("", "")
+		tables["fittings.csv"] = "run,fitting,tag," + column + "\nSUCTION,basket strainer,STR1,\nDISCHARGE,orifice plate,RO1," + value + "\n"
+		answer, _ := checkJSON(t, writeJob(t, tables))
+		for _, s := range answer.Supplied {
+			if s.On == "RO1" {
+				return s.Figure
+			}
+		}
+		return ""
+	}
+	if k := supplied("hole [mm]", "120"); k != "k 13.73" {
+		t.Errorf("hole of 120 mm: %q", k)
+	}
+	if hole := supplied("k", "13.73"); hole != "120.0 mm" {
+		t.Errorf("k of 13.73: %q", hole)
+	}
+}
+
+// A valve's opening follows its table, opening 0 shuts the run.
+func TestOpening(t *testing.T) {
+	flow := func(opening string) float64 {
+		tables := lift("", "")
+		tables["fittings.csv"] = strings.ReplaceAll(tables["fittings.csv"], "gate valve,V1,", "gate valve,V1,"+opening)
+		return float64(runNamed(t, only(t, writeJob(t, tables)), "DISCHARGE").Flow)
+	}
+	wide, half, quarter, shut := flow("100"), flow("50"), flow("25"), flow("0")
+	if !(wide > half && half > quarter && quarter > 50 && shut == 0) {
+		t.Errorf("flows %g, %g, %g, %g m3/h", wide, half, quarter, shut)
+	}
+}
+
+// A siphon is counted on while the pressure at its top stays above the rule; else, or where the table refuses it, the pump
+// lifts to the high point. By hand: the head at the overboard is 6 m, so that at 8 m and v the pressure is
+// 101325 - rho g (8 - 6 + v2/2g).
+func TestSiphon(t *testing.T) {
+	low := only(t, writeJob(t, lift("", "")))
+	with := only(t, writeJob(t, lift("8", "")))
+	r := runNamed(t, with, "DISCHARGE")
+	rho, v := float64(with.Water.Density), float64(r.Velocity)
+	want := (101325 - rho*9.80665*(8-6+v*v/(2*9.80665))) / 1e5
+	if !(math.Abs(float64(r.LowestPressure)-want) < 1e-6) || r.Flow != runNamed(t, low, "DISCHARGE").Flow {
+		t.Errorf("lowest pressure %g bar, by hand %g; flow %g", float64(r.LowestPressure), want, float64(r.Flow))
+	}
+	if margin := (want*1e5 - float64(with.Water.VapourPressure)) / (rho * 9.80665); !(math.Abs(float64(r.VapourMargin)-margin) < 1e-6) {
+		t.Errorf("margin %g m, by hand %g m", float64(r.VapourMargin), margin)
+	}
+	if notes := strings.Join(with.Notes, "\n"); !strings.Contains(notes, "DISCHARGE rises to 8.0 m, 2.0 m over the head of OUT") || !strings.Contains(notes, "the credit is taken") {
+		t.Errorf("%s", notes)
+	}
+	refused := only(t, writeJob(t, lift("8", "no")))
+	if q := runNamed(t, refused, "DISCHARGE").Flow; !(q < r.Flow-5) {
+		t.Errorf("without credit %g m3/h, with it %g", float64(q), float64(r.Flow))
+	}
+	broken := only(t, writeJob(t, lift("14", ""))) // 8 m of siphon would leave 0.2 bar
+	refused = only(t, writeJob(t, lift("14", "no")))
+	if a, b := runNamed(t, broken, "DISCHARGE").Flow, runNamed(t, refused, "DISCHARGE").Flow; a != b {
+		t.Errorf("broken siphon %g m3/h, no credit %g", float64(a), float64(b))
+	}
+	if notes := strings.Join(broken.Notes, "\n"); !strings.Contains(notes, "no credit is taken") {
+		t.Errorf("%s", notes)
+	}
+	tables := lift("8", "")
+	tables["limits.csv"] += "minimum absolute pressure,DISCHARGE,0.9,bar\n"
+	found := false
+	for _, f := range only(t, writeJob(t, tables)).Findings {
+		if f.Limit == "minimum absolute pressure" {
+			found = true
+			if f.Verdict != study.NotMet || f.On != "DISCHARGE" {
+				t.Errorf("%+v", f)
+			}
+		}
+	}
+	if !found {
+		t.Error("the limit was not judged")
+	}
+}
+
+// A tee named in points.csv: the losses of its legs follow the flows, and along every leg the heads add up.
+func TestTeeInAJob(t *testing.T) {
+	answer, _ := checkJSON(t, seawater, "--condition", "loaded, North Sea winter")
+	c := answer.Conditions[0]
+	head := map[string]float64{}
+	for _, p := range c.Points {
+		head[p.Point] = float64(p.Head)
+	}
+	for _, way := range [][3]string{{"CROSS LINE", "HEADER 1", "HEADER 2"}, {"COOLER 1", "HEADER 1", "COOLERS OUT"}, {"COOLER 2", "HEADER 2", "COOLERS OUT"}, {"PUMP 1 DELIVERY", "DELIVERY 1", "HEADER 1"}} {
+		r := runNamed(t, c, way[0])
+		if got, want := head[way[1]]-head[way[2]], float64(r.PipeLoss+r.FittingLoss+r.TeeLoss); !(math.Abs(got-want) < 1e-6) {
+			t.Errorf("%s: heads differ by %g m, losses %g m", way[0], got, want)
+		}
+	}
+	if r := runNamed(t, c, "CROSS LINE"); !(r.TeeLoss > 0.1) { // the stream turns into the branch and out of it
+		t.Errorf("%+v", r)
+	}
+}
+
+// A non-return valve that holds in every condition what would run backwards stands the wrong way round.
+func TestCheckValveTheWrongWay(t *testing.T) {
+	tables := lift("", "")
+	tables["runs.csv"] = strings.ReplaceAll(tables["runs.csv"], "DISCHARGE,D,OUT", "DISCHARGE,OUT,D")
+	tables["fittings.csv"] = strings.ReplaceAll(tables["fittings.csv"], "gate valve", "swing check valve")
+	code, out, stderr := brinehead("check", writeJob(t, tables))
+	want := `runs.csv:3:1: run: found "DISCHARGE", want its non-return valve the other way round: in every condition water would run from D to OUT`
+	if code != exitInput || out != "" || !strings.HasPrefix(stderr, want) {
+		t.Errorf("exit code %d, %q, %q", code, out, stderr)
+	}
+	tables = lift("", "") // the right way round it says nothing
+	tables["fittings.csv"] = strings.ReplaceAll(tables["fittings.csv"], "gate valve", "swing check valve")
+	if code, _, stderr := brinehead("check", writeJob(t, tables)); code > exitNotMet {
+		t.Errorf("exit code %d, %s", code, stderr)
+	}
+}
+
+// Tees that are none, siphons and high points in the wrong place: each a clear line.
+func TestLayoutRefusals(t *testing.T) {
+	for want, spoil := range map[string][3]string{
+		`found "SUCTION DISCHARGE", want two of the runs that meet in S, where just three do (1 here)`: {"points.csv", "siphon\nSEA,sea,1,\nS,junction,2,", "siphon,straight\nSEA,sea,1,,\nS,junction,2,,SUCTION DISCHARGE"},
+		"points.csv:2:11: siphon: found a siphon at a sea point, want it at an overboard only":         {"points.csv", "SEA,sea,1,", "SEA,sea,1,no"},
+		`high point [m]: found 4 m, want at least the elevations of the run's ends, 3 and 6 m`:         {"runs.csv", "steel,\n", "steel,4\n"},
+	} {
+		tables := lift("", "")
+		if strings.Contains(spoil[2], "straight") {
+			tables["points.csv"] = "point,kind,elevation [m],straight\nSEA,sea,1,\nS,junction,2,SUCTION DISCHARGE\nD,junction,3,\nOUT,overboard,6,\n"
+		} else {
+			tables[spoil[0]] = strings.ReplaceAll(tables[spoil[0]], spoil[1], spoil[2])
+		}
+		if code, _, stderr := brinehead("check", writeJob(t, tables)); code != exitInput || !strings.Contains(stderr, want) {
+			t.Errorf("exit code %d, %s; want %q", code, stderr, want)
+		}
+	}
+}

@@ -21,30 +21,53 @@ type Job struct {
 	Tables *Tables
 
 	curves map[string][]*pumps.Curve // by name of the curve, one for each impeller and speed
-	sizes  map[[2]string]sizeFound   // of the runs, looked up once
+	names  names
 }
 
-// sizeFound is the outcome of looking up a pipe size.
+// names is what the catalogues know of the names in the tables, looked up once for all conditions.
+type names struct {
+	sizes     map[[2]string]sizeFound
+	materials map[string]materialFound
+	fittings  map[string]fittingFound
+}
+
 type sizeFound struct {
 	size hydraulics.Size
 	err  error
 }
 
-// size looks a pipe size up, once for all conditions.
-func (j *Job) size(standard, name string) (hydraulics.Size, error) {
-	return j.sizes[[2]string{standard, name}].size, j.sizes[[2]string{standard, name}].err
+type materialFound struct {
+	material hydraulics.Material
+	state    hydraulics.MaterialState
+	err      error
 }
 
-// findSizes looks up the sizes that the runs name.
-func (j *Job) findSizes() {
-	for _, r := range j.Tables.Runs {
-		if key := [2]string{r.Standard.Value, r.Size.Value}; !r.Bore.Given {
-			if _, done := j.sizes[key]; !done {
-				size, err := hydraulics.FindSize(key[0], key[1])
-				j.sizes[key] = sizeFound{size, err}
-			}
+type fittingFound struct {
+	entry hydraulics.CatalogueEntry
+	err   error
+}
+
+// lookUp looks every name of the tables up.
+func lookUp(t *Tables) names {
+	n := names{map[[2]string]sizeFound{}, map[string]materialFound{}, map[string]fittingFound{}}
+	for _, r := range t.Runs {
+		key, material := [2]string{r.Standard.Value, r.Size.Value}, r.Material.Value
+		if _, done := n.sizes[key]; !done && !r.Bore.Given {
+			size, err := hydraulics.FindSize(key[0], key[1])
+			n.sizes[key] = sizeFound{size, err}
+		}
+		if _, done := n.materials[material]; !done && r.Material.Given() {
+			m, state, err := hydraulics.FindMaterial(material)
+			n.materials[material] = materialFound{m, state, err}
 		}
 	}
+	for _, r := range t.Fittings {
+		if _, done := n.fittings[r.Fitting.Value]; !done {
+			entry, err := hydraulics.FindFitting(r.Fitting.Value)
+			n.fittings[r.Fitting.Value] = fittingFound{entry, err}
+		}
+	}
+	return n
 }
 
 // Read reads the job in a folder, with the tables of a change folder in place of its own where change is not nil.
@@ -54,8 +77,7 @@ func Read(name string, folder, change fs.FS) (*Job, error) {
 	if err != nil {
 		return nil, err
 	}
-	j := &Job{Name: name, Tables: tables, curves: map[string][]*pumps.Curve{}, sizes: map[[2]string]sizeFound{}}
-	j.findSizes()
+	j := &Job{Name: name, Tables: tables, curves: map[string][]*pumps.Curve{}, names: lookUp(tables)}
 	var faults Faults
 	faults = append(faults, j.fitCurves()...)
 	if faults == nil {
@@ -388,7 +410,8 @@ func (b *builder) bore(r RunRow) float64 {
 	if r.Bore.Given {
 		return r.Bore.Value
 	}
-	size, err := b.job.size(r.Standard.Value, r.Size.Value)
+	found := b.job.names.sizes[[2]string{r.Standard.Value, r.Size.Value}]
+	size, err := found.size, found.err
 	if err != nil {
 		place := r.Size.Place
 		if strings.HasPrefix(err.Error(), "pipe standard") {
@@ -422,7 +445,8 @@ func (b *builder) wall(r RunRow, pipe hydraulics.Pipe) float64 {
 	own := b.number(r.Run, "roughness", r.Roughness)
 	roughness := own.Or(0)
 	if r.Material.Given() {
-		material, state, err := hydraulics.FindMaterial(r.Material.Value)
+		found := b.job.names.materials[r.Material.Value]
+		material, state, err := found.material, found.state, found.err
 		if err != nil {
 			b.unknownName(r.Material.Place, err, "brinehead catalogue materials")
 		} else {
@@ -463,7 +487,8 @@ func (b *builder) fitting(r FittingRow, pipe hydraulics.Pipe) (f hydraulics.Fitt
 		Blockage:     b.number(r.Tag, "blockage", r.Blockage).Or(0),
 		NonReturn:    isNonReturn(r.Fitting.Value),
 	}
-	entry, unknown := hydraulics.FindFitting(r.Fitting.Value)
+	found := b.job.names.fittings[r.Fitting.Value]
+	entry, unknown := found.entry, found.err
 	f.NonReturn = f.NonReturn || entry.NonReturn
 	if r.K.Given || r.Kv.Given || r.RatedFlow.Given {
 		if entry.Exponent != 0 && r.RatedFlow.Given && !r.Exponent.Given {

@@ -27,6 +27,7 @@ type Pump struct {
 	Datum    float64 // m above the keel, of the impeller eye
 	Motor    float64 // W, rating of its motor; NaN where not known
 	Running  bool
+	LeakKv   float64 // of its non-return valve when it stands idle, m3/h at 1 bar; 0 for none
 	pumps.Pump
 }
 
@@ -64,7 +65,11 @@ func (p *Plant) link() {
 	p.Network.Pumps = p.Network.Pumps[:0]
 	for i := range p.Pumps {
 		u := &p.Pumps[i]
-		p.Network.Pumps = append(p.Network.Pumps, hydraulics.PumpLink{Name: u.Name, From: u.From, To: u.To, Drive: u.Pump, Running: u.Running})
+		link := hydraulics.PumpLink{Name: u.Name, From: u.From, To: u.To, Drive: u.Pump, Running: u.Running, LeakKv: u.LeakKv}
+		if u.Curve != nil {
+			_, link.Start = u.Range() // far out, on the falling side of any hump
+		}
+		p.Network.Pumps = append(p.Network.Pumps, link)
 	}
 }
 
@@ -89,12 +94,13 @@ type Duty struct {
 	HeldShut      bool // running, but its non-return is shut: the pump turns at its shut-off head
 }
 
-// Duty returns the operating point of a pump. For an idle pump the flow is 0 and every other figure unknown.
+// Duty returns the operating point of a pump. For an idle pump the flow is 0, or below it what leaks back, and every other
+// figure unknown.
 func (s *Solved) Duty(pump int) Duty {
 	u := s.Plant.Pumps[pump]
 	if !u.Running {
 		nan := math.NaN()
-		return Duty{Duty: pumps.Duty{Head: nan, Efficiency: nan, ShaftPower: nan, NPSHRequired: nan, BestShare: nan}, NPSHAvailable: nan, NPSHMargin: nan}
+		return Duty{Duty: pumps.Duty{Flow: s.PumpFlows[pump], Head: nan, Efficiency: nan, ShaftPower: nan, NPSHRequired: nan, BestShare: nan}, NPSHAvailable: nan, NPSHMargin: nan}
 	}
 	flow := math.Max(s.PumpFlows[pump], 0) // a running pump held at rest may stand at -1e-17
 	d := Duty{Duty: u.At(flow, s.Water.Density), Running: true, HeldShut: flow < 1e-9}
@@ -148,6 +154,55 @@ func (s *Solved) SystemCurve(pump int, low, high float64, count int) ([]Demand, 
 		curve = append(curve, d)
 	}
 	return curve, nil
+}
+
+// Crossing is a flow at which a pump's curve meets its system curve.
+type Crossing struct {
+	Flow, Head float64 // m3/s, m
+	Stable     bool    // the pump's head falls more steeply there than the system's demand: a small departure dies out
+}
+
+// Crossings returns every crossing of a pump's curve and its system curve over the digitised range, the other pumps staying
+// on their curves. A falling curve has one at most; one that droops towards rest may have two, of which the left is
+// unstable (A. J. Stepanoff, Centrifugal and Axial Flow Pumps, from memory).
+func (s *Solved) Crossings(pump int) ([]Crossing, error) {
+	const steps = 80
+	u := s.Plant.Pumps[pump]
+	low, high := u.Range()
+	surplus := func(flow float64) (float64, error) {
+		d, err := s.Demand(pump, flow)
+		head, _ := u.Head(flow)
+		return head - d.Head, err
+	}
+	var found []Crossing
+	flow := low
+	before, err := surplus(flow)
+	for k := 1; k <= steps && err == nil; k++ {
+		next := low + (high-low)*float64(k)/steps
+		var after float64
+		if after, err = surplus(next); err != nil {
+			break
+		}
+		if before*after < 0 || after == 0 {
+			a, b := flow, next
+			for range 60 {
+				middle := (a + b) / 2
+				var at float64
+				if at, err = surplus(middle); err != nil {
+					break
+				}
+				if at*before > 0 {
+					a = middle
+				} else {
+					b = middle
+				}
+			}
+			head, _ := u.Head((a + b) / 2)
+			found = append(found, Crossing{(a + b) / 2, head, before > 0})
+		}
+		flow, before = next, after
+	}
+	return found, err
 }
 
 // Intersection finds the operating point of one pump anew, as the crossing of its curve and its system curve between

@@ -97,13 +97,18 @@ func (r Run) NonReturn() bool {
 	return false
 }
 
-// PumpLink is a pump in the network. An idle pump is shut; a running one never passes water backwards.
+// PumpLink is a pump in the network. An idle pump is shut, but for a leak; a running one never passes water backwards.
 type PumpLink struct {
 	Name     string
 	From, To int // indices in Network.Points
 	Drive    HeadSource
 	Running  bool
+	Start    float64 // first guess of its flow, m3/s; 0 leaves it to the solver. A drooping curve may meet the system twice: the guess should lie on its falling side
+	LeakKv   float64 // of the non-return valve behind it, m3/h at 1 bar: an idle pump passes water back from To to From through it; 0 for none
 }
+
+// leaks says whether the pump stands idle behind a leaking non-return valve.
+func (p PumpLink) leaks() bool { return !p.Running && p.LeakKv > 0 }
 
 // HeadSource is a pump as the network sees it: the head (m) it adds at a flow (m3/s, 0 or more), and the derivative
 // of that head with respect to flow. It must answer at every flow, beyond its data by some falling continuation.

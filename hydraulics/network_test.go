@@ -74,6 +74,9 @@ func randomNetwork(rng *rand.Rand) *Network {
 			q := math.Pow(10, -2.5+2*rng.Float64())
 			n.Pumps = append(n.Pumps, PumpLink{Name: fmt.Sprintf("u%d", len(n.Pumps)), From: a, To: b,
 				Drive: parabolicPump{10 + 40*rng.Float64(), 20 * rng.Float64() / (q * q)}, Running: rng.Float64() < 0.8})
+			if rng.Float64() < 0.4 {
+				n.Pumps[len(n.Pumps)-1].LeakKv = math.Pow(10, 2*rng.Float64())
+			}
 		}
 	}
 	// A draw behind a non-return valve, or put in before one, may have no answer; draws are kept where there is none.
@@ -141,6 +144,13 @@ func checkSolution(n *Network, out *Solution) error {
 	for i, p := range n.Pumps {
 		q := out.PumpFlows[i]
 		add(p.From, p.To, q)
+		if p.leaks() {
+			loss, _ := Fitting{Kv: p.LeakKv}.Loss(q, leakPipe, n.Viscosity)
+			if lift := out.Heads[p.From] - out.Heads[p.To]; q > 1e-15 || lift <= 0 && !(math.Abs(loss-lift) <= 1e-6) {
+				return fmt.Errorf("%s: leak of %g m3/s under %g m, whose loss is %g m", p.Name, q, lift, loss)
+			}
+			continue
+		}
 		if !p.Running {
 			if q != 0 {
 				return fmt.Errorf("%s: idle and passing %g m3/s", p.Name, q)
@@ -334,6 +344,9 @@ func denseNewton(n *Network) (heads []float64, ok bool) {
 		}
 		x = next
 		if mat.Norm(&change, math.Inf(1)) < 1e-9 {
+			if len(n.Pumps) > 0 && slices.Min(x[len(n.Runs):links]) < 0 {
+				return nil, false // a parabola's mirror image, where no pump works
+			}
 			for i := range n.Points {
 				heads = append(heads, headAt(x, i))
 			}
@@ -402,6 +415,46 @@ func TestIdlePumpAndShutRunPassNothing(t *testing.T) {
 	if err := s.Solve(out); !errors.As(err, &cut) || !slices.Equal(cut.Points, []string{"S", "D"}) {
 		t.Errorf("a pump shut in on both sides: %v", err)
 	}
+}
+
+// An idle pump behind a leaking valve passes water back, by the definition of Kv: 1 bar drives Kv m3/h in water of 1000.
+func TestIdlePumpLeaks(t *testing.T) {
+	n := chain(plain, plain, PumpLink{Drive: parabolicPump{30, 500}, LeakKv: 20})
+	n.Points[3].Head = 6 + 1e5/(1000*9.80665) // 1 bar over the sea
+	for i := range n.Runs {
+		n.Runs[i].Pipe = Pipe{Bore: 1}
+	}
+	_, out := solveNew(t, n)
+	if got := out.PumpFlows[0] * 3600; !(math.Abs(got+20) < 1e-4) || !(math.Abs(out.RunFlows[0]*3600+20) < 1e-4) {
+		t.Errorf("%g m3/h through the pump, %g through its suction; want -20", got, out.RunFlows[0]*3600)
+	}
+	n.Points[3].Head = 2 // the other way it holds
+	if _, out := solveNew(t, n); out.PumpFlows[0] != 0 {
+		t.Errorf("%g m3/s forwards through an idle pump", out.PumpFlows[0])
+	}
+}
+
+// A drooping curve meets a system with static head twice; from a start on its falling side the solution is the stable one.
+func TestDroopingCurveStable(t *testing.T) {
+	droop := droopingPump{20, 60, 700} // 20 + 60 Q - 700 Q2: 21.3 m at 0.043 m3/s
+	valve := Run{Pipe: Pipe{Bore: 0.3}, Fittings: []Fitting{{Name: "k", Coefficient: Coefficient{K: 5}}}}
+	n := chain(valve, valve, PumpLink{Drive: droop, Running: true, Start: 0.15})
+	n.Points[3].Head = 6 + 20.6
+	_, out := solveNew(t, n)
+	_, slope := droop.Head(out.PumpFlows[0])
+	if !(out.PumpFlows[0] > 0.05) || !(slope < 0) {
+		t.Errorf("%g m3/s, slope %g", out.PumpFlows[0], slope)
+	}
+	if err := checkSolution(n, out); err != nil {
+		t.Error(err)
+	}
+}
+
+// droopingPump is the curve shutOff + rise Q - fall Q2.
+type droopingPump struct{ shutOff, rise, fall float64 }
+
+func (p droopingPump) Head(q float64) (head, slope float64) {
+	return p.shutOff + p.rise*q - p.fall*q*q, p.rise - 2*p.fall*q
 }
 
 // Two equal pumps side by side deliver the same head at double flow; the exact algebra of CHECKS: pump 40 - 1.2e-5 Q2

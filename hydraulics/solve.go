@@ -71,7 +71,7 @@ func NewSolver(n *Network) (*Solver, error) {
 		s.links = append(s.links, newRunLink(r, n.Viscosity))
 	}
 	for _, p := range n.Pumps {
-		s.links = append(s.links, link{from: p.From, to: p.To, drive: p.Drive, oneWay: reversePump, start: 0.05})
+		s.links = append(s.links, newPumpLink(p, n.Viscosity))
 	}
 	links, points := len(s.links), len(n.Points)
 	s.flow, s.next = make([]float64, links), make([]float64, links)
@@ -121,6 +121,22 @@ func newRunLink(r Run, nu float64) link {
 		l.oneWay = reverseRun
 	}
 	return l
+}
+
+// leakPipe lends the leak of a non-return valve a bore, which its law needs at creeping flow only.
+var leakPipe = Pipe{Bore: 0.1}
+
+// newPumpLink makes the link of a pump; that of a leaking idle one runs backwards, from To to From.
+func newPumpLink(p PumpLink, nu float64) link {
+	if p.leaks() {
+		leak := Fitting{Kv: p.LeakKv}.law(leakPipe, nu)
+		return link{from: p.To, to: p.From, fittings: []lossLaw{leak}, oneWay: reverseRun, start: p.LeakKv / 3600}
+	}
+	start := p.Start
+	if !(start > 0) {
+		start = 0.05
+	}
+	return link{from: p.From, to: p.To, drive: p.Drive, oneWay: reversePump, start: start}
 }
 
 // number gives the points that are not fixed their rows and makes the matrix.
@@ -235,7 +251,7 @@ func (s *Solver) settle(forced int) (rounds int, err error) {
 		s.shut[i] = r.Shut
 	}
 	for i, p := range n.Pumps {
-		s.shut[len(n.Runs)+i] = !p.Running || i == forced
+		s.shut[len(n.Runs)+i] = !p.Running && !p.leaks() || i == forced
 	}
 	for k := range s.links { // a flow of nothing has no slope to start from
 		if math.Abs(s.flow[k]) < 1e-3*s.links[k].start {
@@ -640,6 +656,11 @@ func (s *Solver) report(out *Solution, forced int, forcedFlow float64) {
 	out.Heads = append(out.Heads[:0], s.head...)
 	out.RunFlows = append(out.RunFlows[:0], s.flow[:runs]...)
 	out.PumpFlows = append(out.PumpFlows[:0], s.flow[runs:]...)
+	for i, p := range s.network.Pumps {
+		if p.leaks() {
+			out.PumpFlows[i] = -out.PumpFlows[i]
+		}
+	}
 	if forced >= 0 {
 		out.PumpFlows[forced] = forcedFlow
 	}

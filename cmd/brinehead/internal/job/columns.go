@@ -101,6 +101,7 @@ var tables = []table{
 		number("speed", speed, above(0, 20000)),
 		number("motor", power, above(0, 1e8)),
 		number("wear", share, below(0, 1)),
+		number("leak", capacity, above(0, 1e5)),
 		text("note"),
 	}},
 	{name: curvesTable, required: true, columns: []column{
@@ -155,7 +156,7 @@ var settable = map[string][]string{
 	pointsTable:   {"level", "pressure", "draw"},
 	runsTable:     {"state", "roughness", "fouling", "temperature"},
 	fittingsTable: {"blockage", "opening", "k", "kv", "rated drop"},
-	pumpsTable:    {"speed", "wear", "impeller"},
+	pumpsTable:    {"speed", "wear", "impeller", "leak"},
 }
 
 func (t table) fileName() string { return t.name + ".csv" }

@@ -564,9 +564,27 @@ func (b *builder) pumps() {
 			Datum:   r.Datum.Or(b.plant.Elevations[from]),
 			Running: len(running) == 0 || slices.ContainsFunc(running, func(t Text) bool { return fold(t.Value) == fold(r.Pump.Value) }),
 			Motor:   r.Motor.Or(math.NaN()),
+			LeakKv:  b.number(r.Pump, "leak", r.Leak).Or(0),
 			Pump: pumps.Pump{Curve: b.curve(r), Speed: b.number(r.Pump, "speed", r.Speed).Or(0),
 				Wear: b.number(r.Pump, "wear", r.Wear).Or(0)}}
+		if !p.Running && p.LeakKv > 0 {
+			b.letLeak(to)
+		}
 		b.plant.Pumps = append(b.plant.Pumps, p)
+	}
+}
+
+// letLeak opens the non-return valves of the runs that begin at an idle pump's delivery: the leak given for the pump is
+// theirs.
+func (b *builder) letLeak(delivery int) {
+	for k := range b.plant.Network.Runs {
+		run := &b.plant.Network.Runs[k]
+		if run.From != delivery {
+			continue
+		}
+		for i := range run.Fittings {
+			run.Fittings[i].NonReturn = false
+		}
 	}
 }
 

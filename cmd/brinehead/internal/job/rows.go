@@ -127,6 +127,7 @@ type PumpRow struct {
 	Speed    Number `csv:"speed"`
 	Motor    Number `csv:"motor"`
 	Wear     Number `csv:"wear"`
+	Leak     Number `csv:"leak"`
 	Note     Text   `csv:"note"`
 }
 

@@ -161,6 +161,9 @@ func conditionLines(c *study.Condition, u Units, withRuns bool) []string {
 			u.Text(p.NPSHAvailable, "m", 2), u.Text(p.NPSHRequired, "m", 2), u.Text(p.NPSHMargin, "m", 2), u.Text(100*p.BestShare, "", 0)}
 		if !p.Running {
 			row = []string{p.Pump, "idle", "", "", "", "", "", "", ""}
+			if p.Flow < 0 {
+				row[1] = "leaks " + u.Text(-p.Flow, "m3/h", 1)
+			}
 		} else if p.Extrapolated {
 			row[1] = "off curve"
 		}

@@ -68,6 +68,16 @@ type Pump struct {
 	BestShare     Figure `json:"best_efficiency_share"`
 	Extrapolated  bool   `json:"extrapolated"`
 	HeldShut      bool   `json:"held_shut"`
+
+	// Crossings are all flows at which a drooping curve meets the system; none for a curve that only falls.
+	Crossings []Crossing `json:"crossings"`
+}
+
+// Crossing is a meeting of a pump's curve and its system.
+type Crossing struct {
+	Flow   Figure `json:"flow_m3h"`
+	Head   Figure `json:"head_m"`
+	Stable bool   `json:"stable"`
 }
 
 // Run is the flow in a run, positive from its start to its end.
@@ -199,6 +209,12 @@ func (c *Condition) report(j *job.Job) {
 		if p.HeldShut {
 			c.Notes = append(c.Notes, u.Name+" runs against its shut non-return valve and delivers nothing: it heats up")
 		}
+		if !d.Running && d.Flow < 0 {
+			c.remarks = append(c.remarks, fmt.Sprintf("%s stands idle, and %s m3/h run back through its leaking non-return valve", u.Name, short(-d.Flow*3600, 3)))
+		}
+		if p.Running && !p.Extrapolated && u.Droops() {
+			p.Crossings = c.crossings(i)
+		}
 		c.Pumps = append(c.Pumps, p)
 	}
 	for i, r := range s.Network.Runs {
@@ -232,6 +248,32 @@ func (c *Condition) report(j *job.Job) {
 	} else {
 		c.withhold()
 	}
+}
+
+// crossings finds where a drooping curve meets its system, and says so where that is not in one place.
+func (c *Condition) crossings(pump int) (list []Crossing) {
+	found, err := c.solved.Crossings(pump)
+	if err != nil {
+		c.Notes = append(c.Notes, "the curve droops, and its crossings could not be searched: "+err.Error())
+		return nil
+	}
+	name := c.solved.Plant.Pumps[pump].Name
+	var others []string
+	for _, x := range found {
+		list = append(list, Crossing{Figure(x.Flow * 3600), Figure(x.Head), x.Stable})
+		if math.Abs(x.Flow-c.solved.PumpFlows[pump]) > 1e-6 {
+			word := "unstable"
+			if x.Stable {
+				word = "stable"
+			}
+			others = append(others, fmt.Sprintf("%s m3/h, %s m (%s)", short(x.Flow*3600, 3), short(x.Head, 3), word))
+		}
+	}
+	if others != nil {
+		c.remarks = append(c.remarks, fmt.Sprintf("the curve of %s droops and meets the system elsewhere too: %s. The stable point is reported; from rest, or after a dip, the pump may not reach it",
+			name, strings.Join(others, "; ")))
+	}
+	return list
 }
 
 // withhold takes back every figure that rests on an extrapolated one. A fixed head stays: it is given, not found.

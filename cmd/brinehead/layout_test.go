@@ -215,3 +215,43 @@ func TestLayoutRefusals(t *testing.T) {
 		}
 	}
 }
+
+// The leak of an idle pump's non-return valve runs back and is told.
+func TestLeakInAJob(t *testing.T) {
+	folder := copyJob(t, seawater, [3]string{"pumps.csv", "motor [kW]", "motor [kW],leak [m3/h]"}, [3]string{"pumps.csv", ",45\n", ",45,12\n"})
+	answer, _ := checkJSON(t, folder, "--condition", "loaded, North Sea winter")
+	c := answer.Conditions[0]
+	p := c.Pumps[1]
+	if p.Running || !(p.Flow < -5) || p.Head.Known() {
+		t.Errorf("%+v", p)
+	}
+	// 12 m3/h at 1 bar: by the heads at the pump's ends.
+	head := map[string]float64{}
+	for _, q := range c.Points {
+		head[q.Point] = float64(q.Head)
+	}
+	if want := -12 * math.Sqrt((head["DELIVERY 2"]-head["SUCTION 2"])*1000*9.80665/1e5); !(math.Abs(float64(p.Flow)-want) < 1e-3) {
+		t.Errorf("leak %g m3/h, by hand %g", float64(p.Flow), want)
+	}
+	if notes := strings.Join(c.Notes, "\n"); !strings.Contains(notes, "P2 stands idle, and ") {
+		t.Errorf("%s", notes)
+	}
+	if _, out, _ := brinehead("check", folder, "--condition", "loaded, North Sea winter"); !strings.Contains(out, "leaks ") {
+		t.Errorf("%s", out)
+	}
+}
+
+// A curve that droops towards rest, against a static head: both meetings are told, the stable one is reported.
+func TestDroopingCurveInAJob(t *testing.T) {
+	tables := lift("", "")
+	tables["pump_curves.csv"] = "curve,flow [m3/h],head [m],efficiency [%],npshr [m]\nC1,0,17,0,1.5\nC1,60,18.2,35,1.6\nC1,120,18.4,60,1.8\nC1,200,16.4,76,2.2\nC1,300,11,74,3.2\nC1,360,7,60,4.4\n"
+	tables["points.csv"] = strings.ReplaceAll(tables["points.csv"], "overboard,6,", "overboard,22.4,")
+	c := only(t, writeJob(t, tables))
+	x := c.Pumps[0].Crossings
+	if len(x) != 2 || x[0].Stable || !x[1].Stable || !(x[0].Flow < 60) || !(math.Abs(float64(x[1].Flow-c.Pumps[0].Flow)) < 1e-3) {
+		t.Errorf("%+v at %+v", x, c.Pumps[0])
+	}
+	if notes := strings.Join(c.Notes, "\n"); !strings.Contains(notes, "the curve of P1 droops and meets the system elsewhere too: ") || !strings.Contains(notes, "(unstable)") {
+		t.Errorf("%s", notes)
+	}
+}

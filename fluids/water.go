@@ -18,9 +18,15 @@ const (
 	SeaWater
 )
 
-// String names the kind as job tables write it.
+// String names the kind as job tables write it; a number that is no kind reads as one.
 func (k Kind) String() string {
-	return [...]string{"fresh", "sea"}[k]
+	switch k {
+	case FreshWater:
+		return "fresh"
+	case SeaWater:
+		return "sea"
+	}
+	return fmt.Sprintf("Kind(%d)", int(k))
 }
 
 // State is one water at one temperature and pressure. The zero value is no water: states come from [Fresh] and [Sea].
@@ -75,12 +81,15 @@ const (
 	if97Publication = "IAPWS R7-97(2012), Industrial Formulation 1997 for the thermodynamic properties of water and steam"
 )
 
-// Sources returns the source of each property of a kind of water.
+// Sources returns the source of each property of a kind of water, none for a number that is no kind.
 func Sources(k Kind) []Source {
-	if k == SeaWater {
+	switch k {
+	case FreshWater:
+		return freshSources()
+	case SeaWater:
 		return seaSources()
 	}
-	return freshSources()
+	return nil
 }
 
 func freshSources() []Source {

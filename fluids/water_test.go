@@ -151,4 +151,12 @@ func TestSources(t *testing.T) {
 	if got := fmt.Sprint(FreshWater, SeaWater); got != "fresh sea" {
 		t.Errorf("kinds read %q", got)
 	}
+	for _, none := range []Kind{-1, SeaWater + 1} { // a number that is no kind must not pass for fresh water
+		if got := Sources(none); got != nil {
+			t.Errorf("%v has sources %+v", none, got)
+		}
+	}
+	if got := fmt.Sprint(Kind(-1), SeaWater+1); got != "Kind(-1) Kind(2)" {
+		t.Errorf("numbers that are no kind read %q", got)
+	}
 }

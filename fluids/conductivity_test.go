@@ -25,3 +25,23 @@ func TestSeaConductivityExcess(t *testing.T) {
 	}
 	within(t, "excess", got, -0.00418604, 0.5e-8)
 }
+
+// testdata/reference/saline.csv from 10 degC: the guideline's one check value is at atmospheric pressure, where the
+// coefficients of pressure are idle. The two programs sum alike, so they agree to rounding.
+func TestSeaConductivityExcessAgainstReference(t *testing.T) {
+	g := readGrid(t, "saline.csv")
+	if n := g.count(t, "conductivity_W_m_K"); n != 27 {
+		t.Errorf("%d figures, want 27", n)
+	}
+	for _, row := range g.rows {
+		want, ok := g.at(t, row, "conductivity_W_m_K")
+		if !ok {
+			continue
+		}
+		got, err := SeaConductivityExcess(row[0], row[1], row[2])
+		if err != nil {
+			t.Fatal(err)
+		}
+		near(t, "excess", got, want, 1e-11)
+	}
+}

@@ -140,12 +140,15 @@ def saline():
                     f"{salt['gp']:.12e}",
                     f"{-kelvin * salt['gtt'] * 1e3:.12e}",
                     f"{(salt['g'] - salinity * salt['gs']) * 1e3:.12e}",
+                    f"{iapws08._ThCond_SeaWater(kelvin, pascal / 1e6, salinity):.12e}" if kelvin >= ZERO_CELSIUS else "",
                 ])
     write("saline.csv", [
         f"Saline part of the Gibbs function of sea water, IAPWS R13-08 eq. 4. Made by water.py with {IAPWS}.",
         "Away from 273.15 K and from atmospheric pressure at once, where the release's own table 8 is blind to many terms;",
         "some rows are outside what the release calls its range, which does not matter to the arithmetic.",
-    ], ["temperature_K", "pressure_Pa", "salinity_g_kg", "volume_m3_kg", "heat_capacity_J_kg_K", "water_potential_J_kg"], rows)
+        "conductivity: what salt adds by the IAPWS guideline on the thermal conductivity of seawater (2015), from 0 degC.",
+    ], ["temperature_K", "pressure_Pa", "salinity_g_kg", "volume_m3_kg", "heat_capacity_J_kg_K", "water_potential_J_kg",
+        "conductivity_W_m_K"], rows)
 
 
 if __name__ == "__main__":

@@ -75,10 +75,12 @@ func LiquidWater(kelvin, absolutePascal float64) (Liquid, error) {
 	return liquidWater(kelvin, absolutePascal), nil
 }
 
+// gasConstant is the specific gas constant of water and its steam, J/(kg K): IAPWS R7-97(2012), eq. 1.
+const gasConstant = 461.526
+
 // liquidWater is [LiquidWater] without its range. The sums are moments of the terms of eq. 7, from which the
 // derivatives of table 4 follow by division: each power is then taken once for all of them.
 func liquidWater(kelvin, pascal float64) Liquid {
-	const gasConstant = 461.526 // J/(kg K), eq. 1
 	pi, tau := pascal/16.53e6, 1386/kelvin
 	a, b := 7.1-pi, tau-1.222
 

@@ -73,7 +73,7 @@ const (
 //
 //	ln(p/p0) = potential/(R T),   p0 from eq. 30 of IAPWS-IF97
 //
-// The potential is taken at atmospheric pressure, which moves the result by less than 1e-6.
+// The potential is taken at atmospheric pressure, which moves the result by less than 3e-6.
 //
 // Source: the boiling equation of IAPWS Advisory Note 5, eq. 7, solved for pressure.
 // Range: -2 to 80 degC, 0 to 45 g/kg; outside it, or for NaN, the result is NaN and a [*RangeError]. Below 0 degC
@@ -89,7 +89,6 @@ func SeaVapourPressure(celsius, salinity float64) (float64, error) {
 }
 
 func seaVapourPressure(kelvin, salinity float64) float64 {
-	const steamGasConstant = 461.526 // J/(kg K), IAPWS R7-97(2012), eq. 1
 	potential := saline(kelvin, StandardAtmosphere, salinity).WaterPotential
-	return saturation(kelvin) * math.Exp(potential/(steamGasConstant*kelvin))
+	return saturation(kelvin) * math.Exp(potential/(gasConstant*kelvin))
 }

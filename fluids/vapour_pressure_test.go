@@ -72,3 +72,19 @@ func TestSeaVapourPressureAgainstNayar(t *testing.T) {
 	}
 	t.Logf("greatest deviation from Nayar's ratio: %.2g", greatest)
 }
+
+// What [SeaVapourPressure] says of the pressure at which it takes the potential: at the vapour pressure itself the
+// result is within 3e-6.
+func TestSeaVapourPressureHardlyKnowsPressure(t *testing.T) {
+	greatest := 0.0
+	for celsius := SeaLowestCelsius; celsius <= SeaHighestCelsius; celsius++ {
+		for salinity := 0.0; salinity <= SeaSaltiest; salinity++ {
+			kelvin := celsius + zeroCelsius
+			pascal := seaVapourPressure(kelvin, salinity)
+			there := saturation(kelvin) * math.Exp(saline(kelvin, pascal, salinity).WaterPotential/(gasConstant*kelvin))
+			greatest = math.Max(greatest, math.Abs(pascal/there-1))
+			near(t, "sea vapour pressure", pascal, there, 3e-6)
+		}
+	}
+	t.Logf("greatest deviation %.2g", greatest)
+}

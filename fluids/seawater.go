@@ -89,8 +89,9 @@ type Salt struct {
 // an absolute salinity in g/kg.
 //
 // Source: IAPWS R13-08 (2008), eq. 4 and table 2.
-// Range: 261 to 353.15 K (the release ends at 353), 0 to 100 MPa, 0 to 120 g/kg; outside it, or for NaN, a [*RangeError]. The release covers
-// pressures other than atmospheric to 40 degC and 42 g/kg; beyond, what depends on pressure is extrapolated.
+// Range: 261 to 353.15 K (the release ends at 353), 0 to 100 MPa, 0 to 120 g/kg; outside it, or for NaN, a
+// [*RangeError]. The release covers pressures other than atmospheric to 40 degC and 42 g/kg; beyond, what depends on
+// pressure is extrapolated.
 // Accuracy: table 8 of the release to its nine digits.
 func Saline(kelvin, absolutePascal, salinity float64) (Salt, error) {
 	const method = "IAPWS R13-08 saline part"

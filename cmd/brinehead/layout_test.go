@@ -1,6 +1,8 @@
 package main
 
 import (
+	"encoding/json"
+	"fmt"
 	"math"
 	"os"
 	"path/filepath"
@@ -253,5 +255,69 @@ func TestDroopingCurveInAJob(t *testing.T) {
 	}
 	if notes := strings.Join(c.Notes, "\n"); !strings.Contains(notes, "the curve of P1 droops and meets the system elsewhere too: ") || !strings.Contains(notes, "(unstable)") {
 		t.Errorf("%s", notes)
+	}
+}
+
+// A three-way valve: one opening sets both ports, the flows divide and add up over the stroke, and the orifice sized for the
+// bypass, put into the job, makes the flow on bypass that of the cooler.
+func TestThreeWayValve(t *testing.T) {
+	code, out, stderr := brinehead("check", freshwater, "--valve", "V30", "--condition", "sea passage, tropics", "--format", "json")
+	var answer study.ValveTable
+	if err := json.Unmarshal([]byte(out), &answer); err != nil || code != exitMet || stderr != "" {
+		t.Fatalf("exit code %d, %v, %s", code, err, stderr)
+	}
+	c := answer.Conditions[0]
+	if len(c.Rows) != 11 || c.Rows[0].A != 0 || c.Rows[10].B != 0 || c.Orifice == nil || answer.RunB != "BYPASS" {
+		t.Fatalf("%+v", answer)
+	}
+	for k, r := range c.Rows {
+		if !(math.Abs(float64(r.A+r.B-r.Total)) < 1e-9) || !(math.Abs(float64(r.Total-r.Pumps[0].Flow)) < 1e-6) {
+			t.Errorf("%+v: flows do not add up", r)
+		}
+		if k > 0 && !(r.A > c.Rows[k-1].A && r.B < c.Rows[k-1].B) {
+			t.Errorf("%+v after %+v", r, c.Rows[k-1])
+		}
+	}
+	// With the valve at 100 % the check itself gives the same flow.
+	check, _ := checkJSON(t, freshwater, "--condition", "sea passage, tropics")
+	if a, b := float64(check.Conditions[0].Pumps[0].Flow), float64(c.Rows[10].Total); !(math.Abs(a-b) < 1e-6) {
+		t.Errorf("check %g m3/h, valve table %g", a, b)
+	}
+	folder := copyJob(t, freshwater, [3]string{"fittings.csv", "BYPASS,throttling disc,,1,12,", fmt.Sprintf("BYPASS,throttling disc,,1,%.9f,", 12+float64(c.Orifice.K))})
+	_, out, _ = brinehead("check", folder, "--valve", "V30", "--condition", "sea passage, tropics", "--format", "json")
+	var matched study.ValveTable
+	if err := json.Unmarshal([]byte(out), &matched); err != nil {
+		t.Fatal(err)
+	}
+	if rows := matched.Conditions[0].Rows; !(math.Abs(float64(rows[0].Total-rows[10].Total)) < 1e-4) {
+		t.Errorf("on bypass %g m3/h, through the cooler %g", float64(rows[0].Total), float64(rows[10].Total))
+	}
+	for _, format := range []string{"text", "csv"} {
+		code, out, stderr := brinehead("check", freshwater, "--valve", "v30", "--format", format, "--units", "us")
+		if code != exitMet || stderr != "" || widest(out) > 80 && format == "text" {
+			t.Errorf("%s: exit code %d, %s\n%s", format, code, stderr, out)
+		}
+	}
+	for want, args := range map[string][]string{
+		`valve: found "V31", want the tag of a three-way valve`: {"check", freshwater, "--valve", "V31"},
+		`valve: found "CLR", want the tag of a three-way valve`: {"check", freshwater, "--valve", "CLR"},
+	} {
+		if code, _, stderr := brinehead(args...); code != exitInput || !strings.Contains(stderr, want) {
+			t.Errorf("exit code %d, %s", code, stderr)
+		}
+	}
+	tables := map[string]string{
+		"one port": "CENTRAL COOLER,three-way valve port A,V30,1,,620,,,,\n",
+		"no kv":    "CENTRAL COOLER,three-way valve port A,V30,1,5,,,,,\nBYPASS,three-way valve port B,V30,1,,620,,,,\n",
+	}
+	for name, want := range map[string]string{"one port": "want the valve's other port", "no kv": "the kv [m3/h] of the port fully open"} {
+		head := "run,fitting,tag,count,k,kv [m3/h],rated flow [m3/h],rated drop [bar],exponent,heat [kW]\nLO COOLER,elbow,LOC,,,,,,,\nAIR COOLER,elbow,CAC,,,,,,,\n"
+		folder := copyJob(t, freshwater)
+		if err := os.WriteFile(filepath.Join(folder, "fittings.csv"), []byte(head+tables[name]), 0o644); err != nil {
+			t.Fatal(err)
+		}
+		if code, _, stderr := brinehead("check", folder); code != exitInput || !strings.Contains(stderr, want) {
+			t.Errorf("%s: exit code %d, %s", name, code, stderr)
+		}
 	}
 }

@@ -181,13 +181,14 @@ type Wall struct {
 	Least, Greatest hydraulics.Bound
 }
 
-// Build builds one condition: the tables with the condition's own values in place of theirs. The error is Faults that
-// name the rows concerned.
-func (j *Job) Build(name string) (*Case, error) {
+// Build builds one condition: the tables with the condition's own values in place of theirs, and then those of set. The
+// error is Faults that name the rows concerned.
+func (j *Job) Build(name string, set ...Override) (*Case, error) {
 	row, err := j.condition(name)
 	if err != nil {
 		return nil, err
 	}
+	row.Overrides = append(slices.Clone(row.Overrides), set...)
 	b := &builder{job: j, condition: row, point: map[string]int{}, plant: &curves.Plant{}}
 	b.water()
 	b.points()
@@ -228,7 +229,7 @@ func (b *builder) fault(at Place, found, want, hint string) {
 
 // number returns a row's value, or the condition's own for that element where it has one.
 func (b *builder) number(element Text, quantity string, own Number) Number {
-	for _, o := range b.condition.Overrides {
+	for _, o := range slices.Backward(b.condition.Overrides) { // the last one set
 		if o.Number.Given && o.Quantity == quantity && fold(o.Tag.Value) == fold(element.Value) {
 			return o.Number
 		}
@@ -487,6 +488,9 @@ func (b *builder) fitting(r FittingRow, pipe hydraulics.Pipe) (f hydraulics.Fitt
 		Blockage:     b.number(r.Tag, "blockage", r.Blockage).Or(0),
 		NonReturn:    isNonReturn(r.Fitting.Value),
 	}
+	if port := ValvePort(r.Fitting.Value); port != "" {
+		return b.threeWayPort(r, f, port, opening)
+	}
 	found := b.job.names.fittings[r.Fitting.Value]
 	entry, unknown := found.entry, found.err
 	f.NonReturn = f.NonReturn || entry.NonReturn
@@ -529,6 +533,40 @@ func (b *builder) fitting(r FittingRow, pipe hydraulics.Pipe) (f hydraulics.Fitt
 	f.Coefficient = coefficient
 	b.supply(nameOf(r), "loss coefficient", fmt.Sprintf("k %.4g", coefficient.K), fmt.Sprintf("%s: %s; %s; mark %s; scatter %.0f %%", entry.Name, entry.Method, entry.Source, entry.Mark, entry.Scatter*100))
 	return f, false
+}
+
+// ValvePort says which port of a three-way valve a fitting's name means: "a", "b", or none.
+func ValvePort(name string) string {
+	name = strings.NewReplacer(",", " ", "-", " ").Replace(fold(name))
+	name = strings.Join(strings.Fields(name), " ")
+	for _, port := range []string{"a", "b"} {
+		if name == "three way valve port "+port {
+			return port
+		}
+	}
+	return ""
+}
+
+// SetOpening sets the opening (a fraction) of a tagged valve, for Build.
+func SetOpening(tag string, opening float64) Override {
+	return Override{Tag: Text{Value: tag}, Table: fittingsTable, Quantity: "opening", Number: Number{Value: opening, Given: true}}
+}
+
+// threeWayPort is one port of a three-way valve, mixing or diverting: its Kv fully open, times the share of the stroke by
+// which it is open. Port A opens with the valve, port B closes. The characteristic is taken as linear, so that the two
+// together pass the same at any opening (common practice for mixing valves; a maker's curve differs).
+func (b *builder) threeWayPort(r FittingRow, f hydraulics.Fitting, port string, opening Number) (hydraulics.Fitting, bool) {
+	if !r.Kv.Given || !r.Tag.Given() {
+		b.fault(r.Fitting.Place, quoted(r.Fitting.Value), "a tag, the same at both ports, and the kv [m3/h] of the port fully open", "")
+		return f, false
+	}
+	share := opening.Or(1)
+	if port == "b" {
+		share = 1 - share
+	}
+	f.Kv *= share
+	b.supply(nameOf(r)+" port "+strings.ToUpper(port), "kv", fmt.Sprintf("%.4g m3/h", f.Kv), fmt.Sprintf("%g m3/h fully open, %.0f %% open, linear characteristic (common practice)", r.Kv.Value, share*100))
+	return f, share <= 0
 }
 
 // orificeHole works out the hole of an orifice plate whose loss the row gives: the plate to be made.

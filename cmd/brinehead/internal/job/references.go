@@ -107,11 +107,7 @@ func (r *reader) register(tableName string) map[string]element {
 			names = append(names, row.Pump)
 		}
 	case fittingsTable:
-		for _, row := range t.Fittings {
-			if row.Tag.Given() {
-				names = append(names, row.Tag)
-			}
-		}
+		names = r.tags()
 	case conditionsTable:
 		for _, row := range t.Conditions {
 			names = append(names, row.Condition)
@@ -127,6 +123,33 @@ func (r *reader) register(tableName string) map[string]element {
 		known[key] = element{n.Value, tableName, n.Place}
 	}
 	return known
+}
+
+// tags lists the tags of fittings.csv. The two ports of a three-way valve share one.
+func (r *reader) tags() []Text {
+	ports := map[string]string{} // by tag: the ports met
+	var names []Text
+	for _, row := range r.tables.Fittings {
+		port, tag := ValvePort(row.Fitting.Value), fold(row.Tag.Value)
+		switch {
+		case !row.Tag.Given():
+		case port == "":
+			names = append(names, row.Tag)
+		case ports[tag] == "":
+			names = append(names, row.Tag)
+			ports[tag] = port
+		case strings.Contains(ports[tag], port):
+			r.fault(row.Tag.Place, quoted(row.Tag.Value), "one port "+strings.ToUpper(port)+" of the valve", "")
+		default:
+			ports[tag] += port
+		}
+	}
+	for _, row := range r.tables.Fittings {
+		if met := ports[fold(row.Tag.Value)]; ValvePort(row.Fitting.Value) != "" && len(met) == 1 && row.Tag.Given() {
+			r.fault(row.Tag.Place, quoted(row.Tag.Value), "the valve's other port, with the same tag, in another run", "")
+		}
+	}
+	return names
 }
 
 // together joins the names of elements. A point may share its name with a run or pump, since a reference to either is

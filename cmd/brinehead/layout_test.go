@@ -271,7 +271,7 @@ func TestThreeWayValve(t *testing.T) {
 		t.Fatalf("%+v", answer)
 	}
 	for k, r := range c.Rows {
-		if !(math.Abs(float64(r.A+r.B-r.Total)) < 1e-9) || !(math.Abs(float64(r.Total-r.Pumps[0].Flow)) < 1e-6) {
+		if !(math.Abs(float64(r.A+r.B-r.Total)) < 1e-5) || !(math.Abs(float64(r.Total-r.Pumps[0].Flow)) < 1e-5) {
 			t.Errorf("%+v: flows do not add up", r)
 		}
 		if k > 0 && !(r.A > c.Rows[k-1].A && r.B < c.Rows[k-1].B) {

@@ -1,6 +1,11 @@
 package job
 
-import "math"
+import (
+	"fmt"
+	"math"
+	"slices"
+	"strings"
+)
 
 // column is what one column of a table may hold.
 type column struct {
@@ -18,7 +23,7 @@ type table struct {
 	name     string
 	required bool
 	columns  []column
-	key      string // column whose names must be unique, or empty
+	key      string // column whose names others may refer to, or empty
 }
 
 // Names of the tables.
@@ -68,13 +73,13 @@ var tables = []table{
 		number("high point", length, between(-100, 200)),
 		text("note"),
 	}},
-	{name: fittingsTable, required: true, columns: []column{
+	{name: fittingsTable, required: true, key: "tag", columns: []column{
 		text("run").must(), text("fitting").must(), text("tag"),
 		{name: "count", quantity: plain, within: between(1, 10000), integer: true},
 		number("k", plain, between(0, 1e9)),
 		number("kv", capacity, above(0, 1e7)),
 		number("rated flow", flow, above(0, 100)),
-		number("rated drop", pressure, between(0, 1e8)),
+		number("rated drop", drop, between(0, 1e8)),
 		number("rated density", density, above(0, 2000)),
 		number("exponent", plain, between(0.5, 3)),
 		number("bore", length, between(0.002, 5)),
@@ -104,7 +109,7 @@ var tables = []table{
 		number("leak", capacity, above(0, 1e5)),
 		text("note"),
 	}},
-	{name: curvesTable, required: true, columns: []column{
+	{name: curvesTable, required: true, key: "curve", columns: []column{
 		text("curve").must(),
 		number("impeller", length, between(0.01, 5)),
 		number("speed", speed, above(0, 20000)),
@@ -120,7 +125,7 @@ var tables = []table{
 		number("temperature", temperature, between(-5, 150)).must(),
 		number("salinity", salinity, between(0, 45)),
 		number("draught", length, between(0, 50)),
-		number("atmosphere", pressure, between(5e4, 1.2e5)),
+		number("atmosphere", absolutePressure, between(5e4, 1.2e5)),
 		text("running"),
 	}},
 	{name: limitsTable, columns: []column{
@@ -132,7 +137,10 @@ var tables = []table{
 		text("unit").must(), text("condition"), text("note"),
 	}},
 	{name: readingsTable, columns: []column{
-		text("condition").must(), text("quantity").must(), text("on").must(),
+		text("condition").must(),
+		word("quantity", "suction gauge", "discharge gauge", "differential", "flow", "velocity", "shaft power", "motor power", "motor current", "speed",
+			"temperature", "level", "draught").must(),
+		text("on").must(),
 		column{name: "value", quantity: plain, within: anyNumber, perRow: true}.must(),
 		text("unit").must(),
 		number("gauge elevation", length, between(-100, 200)),
@@ -140,16 +148,31 @@ var tables = []table{
 	}},
 }
 
-// limitQuantities says in what a limit is given.
-var limitQuantities = map[string]Quantity{
-	"minimum flow": flow, "maximum flow": flow, "npsh margin": length, "npsh ratio": ratio, "maximum velocity": velocity,
-	"minimum velocity": velocity, "maximum shaft power": power, "least share of best-efficiency flow": share,
-	"greatest share of best-efficiency flow": share, "minimum pressure": pressure, "minimum absolute pressure": pressure, "minimum immersion": length,
-	"maximum outlet temperature": temperature,
+// measure is what a value may be whose unit stands in its own row.
+type measure struct {
+	quantity Quantity
+	within   interval // of SI values
 }
 
-// readingQuantities are the quantities whose units a reading may have.
-var readingQuantities = []Quantity{pressure, flow, power, temperature, speed, length, current, velocity}
+// limitQuantities says in what a limit is given.
+var limitQuantities = map[string]measure{
+	"minimum flow": {flow, between(0, 100)}, "maximum flow": {flow, above(0, 100)},
+	"npsh margin": {length, between(0, 100)}, "npsh ratio": {ratio, above(0, 100)},
+	"maximum velocity": {velocity, above(0, 100)}, "minimum velocity": {velocity, between(0, 100)},
+	"maximum shaft power":                 {power, above(0, 1e8)},
+	"least share of best-efficiency flow": {share, between(0, 10)}, "greatest share of best-efficiency flow": {share, above(0, 10)},
+	"minimum pressure": {pressure, between(-1.1e5, 1e8)}, "minimum absolute pressure": {absolutePressure, between(0, 1e8)},
+	"minimum immersion": {length, between(0, 50)}, "maximum outlet temperature": {temperature, between(-5, 150)},
+}
+
+// readingQuantities says in what a reading is given.
+var readingQuantities = map[string]measure{
+	"suction gauge": {pressure, between(-1.1e5, 1e8)}, "discharge gauge": {pressure, between(-1.1e5, 1e8)},
+	"differential": {drop, between(-1e8, 1e8)}, "flow": {flow, between(-100, 100)}, "velocity": {velocity, between(-100, 100)},
+	"shaft power": {power, between(0, 1e8)}, "motor power": {power, between(0, 1e8)}, "motor current": {current, between(0, 1e5)},
+	"speed": {speed, between(0, 20000)}, "temperature": {temperature, between(-5, 150)},
+	"level": {length, between(-100, 200)}, "draught": {length, between(0, 50)},
+}
 
 // settable are the columns that a condition may set for one element, by table.
 var settable = map[string][]string{
@@ -158,6 +181,47 @@ var settable = map[string][]string{
 	fittingsTable: {"blockage", "opening", "k", "kv", "rated drop"},
 	pumpsTable:    {"speed", "wear", "impeller", "leak"},
 }
+
+// TableContract is what a table of a job folder may hold.
+type TableContract struct {
+	File     string // as in "runs.csv"
+	Required bool   // a job must have it
+	Columns  []ColumnContract
+}
+
+// ColumnContract is what a column of a table may hold.
+type ColumnContract struct {
+	Name     string   // as it is matched, without its unit
+	Quantity Quantity // its units, of which the header names one; none for words and plain numbers
+	Required bool     // the table must have it, and every row fill it in
+	Words    []string // the words it may be, or none where any will do
+	Range    string   // of its number in the quantity's first unit, such as "at least 2, at most 5000"; empty for words
+	Settable bool     // a condition may set it for one element, in a column "TAG name [unit]"
+}
+
+// Contract returns what every table may hold: the list by which tables are read.
+func Contract() []TableContract {
+	var list []TableContract
+	for _, t := range tables {
+		entry := TableContract{File: t.fileName(), Required: t.required}
+		for _, c := range t.columns {
+			out := ColumnContract{Name: c.name, Quantity: c.quantity, Required: c.required, Words: slices.Clone(c.oneOf), Settable: slices.Contains(settable[t.name], c.name)}
+			if c.isNumber() {
+				u := Unit{Factor: 1}
+				if len(c.quantity.Units) > 0 {
+					u = c.quantity.Units[0]
+				}
+				out.Range = c.within.words(u)
+			}
+			out.Quantity.Units = slices.Clone(c.quantity.Units)
+			entry.Columns = append(entry.Columns, out)
+		}
+		list = append(list, entry)
+	}
+	return list
+}
+
+func (c column) isNumber() bool { return c.quantity.Name != words.Name }
 
 func (t table) fileName() string { return t.name + ".csv" }
 
@@ -169,6 +233,19 @@ func (t table) column(name string) (column, bool) {
 		}
 	}
 	return column{}, false
+}
+
+// columnHint says what to do about a column of no known name.
+func (t table) columnHint(name string) string {
+	if before, unit, bracketed := strings.Cut(strings.TrimSuffix(name, ")"), "("); bracketed {
+		if c, known := t.column(fold(before)); known {
+			return fmt.Sprintf("a unit stands in square brackets: %s [%s]", c.name, unit)
+		}
+	}
+	if name == "cv" { // so near to kv in spelling, so far in meaning
+		return "kv [m3/h] is 0.865 times a Cv in gpm (US) at 1 psi"
+	}
+	return nearestHint(name, t.columnNames())
 }
 
 func (t table) columnNames() []string {

@@ -72,7 +72,7 @@ func (f Faults) Err() error {
 	}
 	sorted := slices.Clone(f)
 	slices.SortStableFunc(sorted, func(a, b Fault) int {
-		return cmp.Or(cmp.Compare(a.File, b.File), cmp.Compare(a.Line, b.Line), cmp.Compare(a.Col, b.Col))
+		return cmp.Or(cmp.Compare(a.File, b.File), cmp.Compare(a.Line, b.Line), cmp.Compare(a.Col, b.Col), cmp.Compare(a.Found, b.Found))
 	})
 	return slices.Compact(sorted)
 }

@@ -71,7 +71,7 @@ func lookUp(t *Tables) names {
 }
 
 // Read reads the job in a folder, with the tables of a change folder in place of its own where change is not nil.
-// The error is Faults, or what the file system says of a folder that cannot be read.
+// The error is Faults.
 func Read(name string, folder, change fs.FS) (*Job, error) {
 	tables, err := ReadTables(folder, change)
 	if err != nil {
@@ -358,11 +358,10 @@ func (b *builder) siphons() {
 // tees makes the tees of the points that name the two runs that go straight through.
 func (b *builder) tees() {
 	runs := map[string]int{}
-	known := map[string]element{}
 	for k, r := range b.job.Tables.Runs {
 		runs[fold(r.Run.Value)] = k
-		known[fold(r.Run.Value)] = element{name: r.Run.Value}
 	}
+	known := func(name string) bool { _, has := runs[fold(name)]; return has }
 	for i, r := range b.job.Tables.Points {
 		if !r.Straight.Given() {
 			continue

@@ -39,7 +39,11 @@ func (n Number) Or(value float64) float64 {
 	return value
 }
 
-func notGiven(at Place) Number { return Number{Value: math.NaN(), Place: at} }
+// written says whether the cell holds anything, be it right or wrong.
+func (n Number) written() bool { return n.raw != "" }
+
+// notGiven is the number of a cell that is blank, or whose text is a fault.
+func notGiven(at Place, text string) Number { return Number{Value: math.NaN(), Place: at, raw: text} }
 
 // Tables are the tables of a job, row by row, with references checked.
 type Tables struct {
@@ -184,7 +188,7 @@ type ReadingRow struct {
 	Value          Number `csv:"value"`
 	Unit           Text   `csv:"unit"`
 	GaugeElevation Number `csv:"gauge elevation"`
-	Uncertainty    Number `csv:"uncertainty"`
+	Uncertainty    Number `csv:"uncertainty"` // plus or minus, in the SI unit of Value; of a temperature, a difference
 }
 
 // FileNote says how a file was read.
@@ -192,5 +196,6 @@ type FileNote struct {
 	Name, Separator, Decimal, Encoding string
 	Rows                               int
 	SHA256                             string
-	FromChange                         bool // it stands in the change folder
+	FromChange                         bool     // it stands in the change folder
+	Notes                              []string // what was taken one way of several: "flow [gpm]: taken as US gallons a minute"
 }

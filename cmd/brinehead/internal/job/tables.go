@@ -1,11 +1,11 @@
 package job
 
 import (
+	"errors"
 	"fmt"
 	"io"
 	"io/fs"
 	"math"
-	"path"
 	"reflect"
 	"slices"
 	"strings"
@@ -14,31 +14,18 @@ import (
 )
 
 // ReadTables reads the tables of a job folder, with those of a change folder (nil for none) in place of its own, and
-// checks what they say against the contract and against each other. The error is Faults, or what the file system says
-// of a folder that cannot be listed.
+// checks what they say against the contract and against each other. The error is Faults: everything that is wrong, at once.
 func ReadTables(folder, change fs.FS) (*Tables, error) {
 	t := &Tables{}
 	r := &reader{tables: t, sheets: map[string]*sheet{}}
-	if err := r.open(folder, false); err != nil {
-		return nil, err
-	}
-	if change != nil {
-		before := len(r.found)
-		if err := r.open(change, true); err != nil {
-			return nil, err
+	if listed := r.open(folder, false); listed {
+		if change != nil {
+			r.open(change, true)
 		}
-		if len(r.found) == before {
-			r.fault(Place{File: "change folder"}, "no table", "at least one table that the change rewrites: "+tableFiles(), "")
-		}
-	}
-	for _, spec := range tables {
-		if !slices.Contains(r.found, spec.name) && spec.required {
-			r.fault(Place{File: spec.fileName()}, "no such table", "a table with the columns "+strings.Join(spec.columnNames(), ", "), "")
-		}
-	}
-	r.rows()
-	if r.faults == nil { // references among rows that are themselves in doubt would only repeat what is said already
+		r.missing()
+		r.rows()
 		r.references()
+		r.notes()
 	}
 	if err := r.faults.Err(); err != nil {
 		return nil, err
@@ -66,11 +53,26 @@ func tableFiles() string {
 	return strings.Join(names, ", ")
 }
 
-// open reads every table of a folder into sheets; those of a later folder take the place of those of an earlier one.
-func (r *reader) open(folder fs.FS, isChange bool) error {
+// missing faults the tables that a job must have and that are in neither folder.
+func (r *reader) missing() {
+	for _, spec := range tables {
+		if !slices.Contains(r.found, spec.name) && spec.required {
+			r.fault(Place{File: spec.fileName()}, "no such table", "a table with the columns "+strings.Join(spec.columnNames(), ", "), "")
+		}
+	}
+}
+
+// open reads every table of a folder into sheets; those of a later folder take the place of those of an earlier one. It
+// says whether the folder holds any table at all.
+func (r *reader) open(folder fs.FS, isChange bool) bool {
+	at, want := Place{File: "job folder"}, "at least "+requiredFiles()
+	if isChange {
+		at, want = Place{File: "change folder"}, "at least one table that the change rewrites: "+tableFiles()
+	}
 	entries, err := fs.ReadDir(folder, ".")
 	if err != nil {
-		return fmt.Errorf("the folder cannot be listed: %w", err)
+		r.fault(at, folderTrouble(err), "a folder of tables", "")
+		return false
 	}
 	seen := map[string]string{}
 	for _, e := range entries {
@@ -89,20 +91,32 @@ func (r *reader) open(folder fs.FS, isChange bool) error {
 		}
 		seen[stem] = e.Name()
 		r.found = append(r.found, spec.name)
-		content, why := readFile(folder, e.Name())
+		content, why := readFile(folder, e)
 		if why != "" {
 			r.fault(Place{File: e.Name()}, why, "a CSV file that can be read", "")
+			delete(r.sheets, spec.name) // a change's table that cannot be read leaves none in its place
 			continue
 		}
-		s, faults := readSheet(spec, e.Name(), content)
+		s, faults := readSheet(spec, e.Name(), content, most)
 		s.note.FromChange = isChange
 		r.faults = append(r.faults, faults...)
 		r.sheets[spec.name] = s
 	}
-	if len(seen) == 0 && !isChange {
-		r.fault(Place{File: "job folder"}, "no tables", "at least "+requiredFiles(), "")
+	if len(seen) == 0 {
+		r.fault(at, "no table", want, "")
 	}
-	return nil
+	return len(seen) > 0
+}
+
+// folderTrouble says in words why a folder cannot be listed.
+func folderTrouble(err error) string {
+	switch {
+	case errors.Is(err, fs.ErrNotExist):
+		return "no such folder"
+	case errors.Is(err, fs.ErrPermission):
+		return "a folder that may not be read"
+	}
+	return "a folder that cannot be listed"
 }
 
 func requiredFiles() string {
@@ -115,23 +129,25 @@ func requiredFiles() string {
 	return strings.Join(names, ", ")
 }
 
-// readFile reads a file of bounded size, or says in words why it cannot.
-func readFile(folder fs.FS, name string) (content []byte, why string) {
-	file, err := folder.Open(path.Clean(name))
-	if err != nil {
+// readFile reads a file of bounded size, or says in words why it cannot. Anything but a plain file is refused before it
+// is opened: a link may lead out of the folder, and a pipe would be waited for without end.
+func readFile(folder fs.FS, entry fs.DirEntry) (content []byte, why string) {
+	switch kind := entry.Type(); {
+	case kind.IsDir():
+		return nil, "a folder of that name"
+	case kind&fs.ModeSymlink != 0:
+		return nil, "a symbolic link"
+	case !kind.IsRegular():
+		return nil, "something that is no plain file"
+	}
+	file, err := folder.Open(entry.Name())
+	if errors.Is(err, fs.ErrPermission) {
+		return nil, "a file that may not be read"
+	} else if err != nil {
 		return nil, "a file that cannot be opened"
 	}
 	defer file.Close()
-	info, err := file.Stat()
-	switch {
-	case err != nil:
-		return nil, "a file that cannot be opened"
-	case info.IsDir():
-		return nil, "a folder of that name"
-	case !info.Mode().IsRegular():
-		return nil, "something that is no plain file"
-	}
-	content, err = io.ReadAll(io.LimitReader(file, mostBytes+1))
+	content, err = io.ReadAll(io.LimitReader(file, int64(most.bytes)+1))
 	if err != nil {
 		return nil, "a file that cannot be read to its end"
 	}
@@ -161,14 +177,22 @@ func (r *reader) rows() {
 			fill(r, s, &t.Conditions)
 		case limitsTable:
 			fill(r, s, &t.Limits)
-			r.limitValues(s)
+			r.limitValues()
 		case readingsTable:
 			fill(r, s, &t.Readings)
-			r.readingValues(s)
+			r.readingValues()
 		}
-		t.Files = append(t.Files, s.note)
-		if spec.required && s.note.Rows == 0 && !s.broken {
+		if spec.required && s.note.Rows == 0 && !s.lost {
 			r.fault(Place{File: s.note.Name}, "no rows", "at least one", "")
+		}
+	}
+}
+
+// notes gathers how each file was read, in the order of the contract.
+func (r *reader) notes() {
+	for _, spec := range tables {
+		if s := r.sheets[spec.name]; s != nil {
+			r.tables.Files = append(r.tables.Files, s.note)
 		}
 	}
 }
@@ -192,7 +216,9 @@ func (r *records) ReadAll() ([][]string, error) { return r.rows, nil }
 // fill checks the header of a sheet, has gocsv put the cells into the rows of a table, and then reads the numbers: gocsv
 // by itself leaves a column it does not know at nothing, takes NaN for a number, and loses count of lines.
 func fill[Row any](r *reader, s *sheet, rows *[]Row) {
-	places := r.header(s) // column of each canonical name
+	before := len(r.faults)
+	places := r.header(s)
+	s.places, s.misled = places, len(r.faults) > before
 	names := make([]string, 0, len(places))
 	for _, c := range s.table.columns {
 		if _, has := places[c.name]; has {
@@ -233,7 +259,10 @@ func fill[Row any](r *reader, s *sheet, rows *[]Row) {
 				field.Place = at
 				r.checkText(c, *field, has)
 			case *Number:
-				*field = r.number(s, c, field.raw, at, s.unitOf(c, column, has))
+				*field = notGiven(at, field.raw)
+				if has {
+					*field = r.number(s, c, field.raw, at, column)
+				}
 			}
 		}
 	}
@@ -267,7 +296,7 @@ func (r *reader) header(s *sheet) map[string]int {
 		c, known := s.table.column(h.name)
 		if !known {
 			if s.table.name != conditionsTable {
-				r.fault(h.Place, "a column of no known name", "one of "+strings.Join(s.table.columnNames(), ", "), nearestHint(h.name, s.table.columnNames()))
+				r.fault(h.Place, "a column of no known name", "one of "+strings.Join(s.table.columnNames(), ", "), s.table.columnHint(h.name))
 			}
 			continue
 		}
@@ -276,7 +305,9 @@ func (r *reader) header(s *sheet) map[string]int {
 			continue
 		}
 		places[c.name] = i
-		r.checkUnit(h, c.quantity)
+		if r.checkUnit(h, c.quantity) {
+			s.noteUnit(h)
+		}
 	}
 	for _, c := range s.table.columns {
 		if _, has := places[c.name]; c.required && !has {
@@ -301,32 +332,31 @@ func (r *reader) checkUnit(h heading, q Quantity) bool {
 		}
 		return true
 	}
-	if !h.hasUnit {
-		if q.Name == ratio.Name || q.Name == speed.Name {
-			return true
-		}
-		r.fault(h.Place, "no unit", "a unit of "+q.Name+" in square brackets: "+q.names(), fmt.Sprintf("write for example %q", h.Column+" ["+q.Units[0].Name+"]"))
+	if h.unit == "" {
+		r.fault(h.Place, "no unit", "a unit of "+q.Name+" in square brackets: "+q.names(), fmt.Sprintf("write for example %q", h.name+" ["+q.Units[0].Name+"]"))
 		return false
 	}
 	if _, known := q.unit(h.unit); !known {
-		r.fault(h.Place, quoted(h.unit), "a unit of "+q.Name+": "+q.names(), nearestHint(h.unit, strings.Split(q.names(), ", ")))
+		r.fault(h.Place, quoted(h.unit), "a unit of "+q.Name+": "+q.names(), q.hint(h.unit))
 		return false
 	}
 	return true
 }
 
-// unitOf returns the unit of a column as its header has it; the first of the quantity where it has none that is known,
-// which is a fault already told.
-func (s *sheet) unitOf(c column, place int, has bool) Unit {
-	if has {
-		if u, known := c.quantity.unit(s.header[place].unit); known {
-			return u
-		}
+// noteUnit notes a unit that was taken one way of several.
+func (s *sheet) noteUnit(h heading) {
+	if as, several := takenAs[fold(h.unit)]; several {
+		s.note.Notes = append(s.note.Notes, h.Column+": taken as "+as)
 	}
-	if len(c.quantity.Units) > 0 {
-		return c.quantity.Units[0]
+}
+
+// unitOf returns the unit of a column as its header has it, and whether it is one of the quantity's; if not, that is a
+// fault already told.
+func (s *sheet) unitOf(c column, place int) (u Unit, known bool) {
+	if len(c.quantity.Units) == 0 {
+		return Unit{Factor: 1}, true
 	}
-	return Unit{Factor: 1}
+	return c.quantity.unit(s.header[place].unit)
 }
 
 // checkText checks a word.
@@ -336,6 +366,8 @@ func (r *reader) checkText(c column, t Text, has bool) {
 		if c.required && has {
 			r.fault(t.Place, "a blank cell", wantWord(c), "")
 		}
+	case errorValue.MatchString(t.Value):
+		r.fault(t.Place, quoted(t.Value), "a value: a spreadsheet's formula has failed here", "")
 	case c.oneOf != nil && !slices.ContainsFunc(c.oneOf, func(w string) bool { return fold(w) == fold(t.Value) }):
 		r.fault(t.Place, quoted(t.Value), wantWord(c), nearestHint(t.Value, c.oneOf))
 	}
@@ -348,67 +380,80 @@ func wantWord(c column) string {
 	return "one of " + strings.Join(c.oneOf, ", ")
 }
 
-// number reads a cell of a number column into SI.
-func (r *reader) number(s *sheet, c column, text string, at Place, u Unit) Number {
+// number reads a cell of the number column c, which stands at a place of the sheet, into SI.
+func (r *reader) number(s *sheet, c column, text string, at Place, place int) Number {
+	u, unitKnown := s.unitOf(c, place)
+	none, within := notGiven(at, text), aNumber
+	if unitKnown {
+		within = c.within.words(u)
+	}
 	if text == "" {
-		if c.required && at.Col > 0 {
-			r.fault(at, "a blank cell", c.within.words(u), "")
+		if c.required {
+			r.fault(at, "a blank cell", within, "")
 		}
-		return notGiven(at)
+		return none
 	}
-	value, want := s.parse(text)
-	if want != "" {
-		if want == "a number" {
-			want = c.within.words(u)
-			if want != "a number" {
-				want = "a number, " + want
-			}
-		}
-		r.fault(at, quoted(text), want, "")
-		return notGiven(at)
-	}
+	value, want, hint := s.parse(text)
 	si := u.ToSI(value)
-	if math.IsInf(si, 0) || !c.within.holds(si) {
-		r.fault(at, quoted(text), c.within.words(u), "")
-		return notGiven(at)
+	switch {
+	case want == aNumber && within != aNumber:
+		r.fault(at, quoted(text), aNumber+", "+within, hint)
+	case want != "":
+		r.fault(at, quoted(text), want, hint)
+	case !unitKnown: // in what the number is given is not known, and told already
+	case math.IsInf(si, 0) || !c.within.holds(si):
+		r.fault(at, quoted(text), within, "")
+	case c.integer && si != math.Trunc(si):
+		r.fault(at, quoted(text), "a whole number, "+within, "")
+	default:
+		return Number{Value: si, Given: true, Place: at, raw: text}
 	}
-	if c.integer && si != math.Trunc(si) {
-		r.fault(at, quoted(text), "a whole number, "+c.within.words(u), "")
-		return notGiven(at)
-	}
-	return Number{Value: si, Given: true, Place: at, raw: text}
+	return none
 }
 
 // limitValues turns the values of limits.csv by the unit of each row.
-func (r *reader) limitValues(s *sheet) {
+func (r *reader) limitValues() {
 	for i := range r.tables.Limits {
 		row := &r.tables.Limits[i]
-		q, known := limitQuantities[fold(row.Limit.Value)]
-		if !known || !row.Value.Given {
-			continue // a fault already told
+		if m, known := limitQuantities[fold(row.Limit.Value)]; known { // else a fault already told
+			r.byOwnUnit(&row.Value, row.Unit, m)
 		}
-		u, known := q.unit(row.Unit.Value)
-		if !known {
-			r.fault(row.Unit.Place, quoted(row.Unit.Value), "a unit of "+q.Name+": "+q.names(), "")
-			continue
-		}
-		row.Value.Value = u.ToSI(row.Value.Value)
 	}
 }
 
-// readingValues turns the values of readings.csv by the unit of each row.
-func (r *reader) readingValues(s *sheet) {
+// readingValues turns the values and uncertainties of readings.csv by the unit of each row.
+func (r *reader) readingValues() {
 	for i := range r.tables.Readings {
 		row := &r.tables.Readings[i]
-		known := false
-		for _, q := range readingQuantities {
-			if u, has := q.unit(row.Unit.Value); has {
-				row.Value.Value, known = u.ToSI(row.Value.Value), true
-				break
-			}
+		m, known := readingQuantities[fold(row.Quantity.Value)]
+		if !known {
+			continue // a fault already told
 		}
-		if !known && row.Unit.Given() {
-			r.fault(row.Unit.Place, quoted(row.Unit.Value), "a unit of pressure, flow, power, temperature, speed, length or current", "")
+		if u, fine := r.byOwnUnit(&row.Value, row.Unit, m); fine && row.Uncertainty.Given {
+			row.Uncertainty.Value *= u.Factor // a difference: without the unit's offset
 		}
 	}
+}
+
+// byOwnUnit turns a value whose unit stands in its own row, and checks its range.
+func (r *reader) byOwnUnit(value *Number, unit Text, m measure) (u Unit, fine bool) {
+	if !unit.Given() {
+		return u, false // a fault already told
+	}
+	u, known := m.quantity.unit(unit.Value)
+	if !known {
+		r.fault(unit.Place, quoted(unit.Value), "a unit of "+m.quantity.Name+": "+m.quantity.names(), m.quantity.hint(unit.Value))
+		return u, false
+	}
+	if !value.Given {
+		return u, true
+	}
+	si := u.ToSI(value.Value)
+	if !m.within.holds(si) {
+		r.fault(value.Place, quoted(value.raw), m.within.words(u)+" "+u.Name, "")
+		*value = notGiven(value.Place, value.raw)
+		return u, true
+	}
+	value.Value = si
+	return u, true
 }

@@ -1,6 +1,9 @@
 package job
 
 import (
+	"bytes"
+	"errors"
+	"fmt"
 	"io/fs"
 	"math"
 	"os"
@@ -47,8 +50,8 @@ func TestBadJobs(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	if len(cases) < 50 {
-		t.Fatalf("%d bad jobs, want at least 50", len(cases))
+	if len(cases) < 90 {
+		t.Fatalf("%d bad jobs, want at least 90", len(cases))
 	}
 	for _, c := range cases {
 		files := good(t, filepath.Join("testdata/bad", c.Name()))
@@ -178,7 +181,7 @@ func TestChangeFolder(t *testing.T) {
 }
 
 func TestOddFolders(t *testing.T) {
-	if _, err := ReadTables(fstest.MapFS{}, nil); err == nil || !strings.Contains(err.Error(), "job folder: found no tables, want at least points.csv") {
+	if _, err := ReadTables(fstest.MapFS{}, nil); err == nil || !strings.Contains(err.Error(), "job folder: found no table, want at least points.csv") {
 		t.Errorf("an empty folder: %v", err)
 	}
 	files := good(t, "")
@@ -196,24 +199,122 @@ func TestOddFolders(t *testing.T) {
 	if _, err := ReadTables(files, nil); err == nil || !strings.Contains(err.Error(), "UTF-16") {
 		t.Errorf("UTF-16: %v", err)
 	}
-	files["runs.csv"] = &fstest.MapFile{Data: make([]byte, mostBytes+1)}
-	if _, err := ReadTables(files, nil); err == nil || !strings.Contains(err.Error(), "at most 64 MiB") {
+	files["runs.csv"] = &fstest.MapFile{Data: make([]byte, most.bytes+1)}
+	if _, err := ReadTables(files, nil); err == nil || !strings.Contains(err.Error(), "runs.csv: found more than 67108864 bytes") {
 		t.Errorf("a huge file: %v", err)
+	}
+}
+
+// noFile is a file system whose files, or whose folder, cannot be opened for the reason given.
+type noFile struct {
+	fstest.MapFS
+	name   string
+	reason error
+}
+
+func (n noFile) Open(name string) (fs.File, error) {
+	if name == n.name {
+		return nil, &fs.PathError{Op: "open", Path: name, Err: n.reason}
+	}
+	return n.MapFS.Open(name)
+}
+
+func (n noFile) ReadDir(name string) ([]fs.DirEntry, error) {
+	if name == n.name {
+		return nil, &fs.PathError{Op: "open", Path: name, Err: n.reason}
+	}
+	return n.MapFS.ReadDir(name)
+}
+
+// Whatever stands in the way of a folder or file is said in words, as Faults, and never waited for.
+func TestUnreadable(t *testing.T) {
+	odd := errors.New("EIO")
+	for _, c := range []struct {
+		what           string
+		folder, change fs.FS
+		want           string
+	}{
+		{"no folder", noFile{good(t, ""), ".", fs.ErrNotExist}, nil, "job folder: found no such folder, want a folder of tables"},
+		{"a folder shut to us", noFile{good(t, ""), ".", fs.ErrPermission}, nil, "job folder: found a folder that may not be read, want a folder of tables"},
+		{"a broken folder", noFile{good(t, ""), ".", odd}, nil, "job folder: found a folder that cannot be listed, want a folder of tables"},
+		{"no change folder", good(t, ""), noFile{nil, ".", fs.ErrNotExist}, "change folder: found no such folder, want a folder of tables"},
+		{"a file shut to us", noFile{good(t, ""), "runs.csv", fs.ErrPermission}, nil, "runs.csv: found a file that may not be read, want a CSV file that can be read"},
+		{"a broken file", noFile{good(t, ""), "runs.csv", odd}, nil, "runs.csv: found a file that cannot be opened, want a CSV file that can be read"},
+		{"a pipe", with(good(t, ""), "runs.csv", fs.ModeNamedPipe), nil, "runs.csv: found something that is no plain file, want a CSV file that can be read"},
+		{"a change that is a link", good(t, ""), with(fstest.MapFS{}, "runs.csv", fs.ModeSymlink), "runs.csv: found a symbolic link, want a CSV file that can be read"},
+		{"a change whose points cannot be known", good(t, ""),
+			with(fstest.MapFS{"runs.csv": {Data: []byte("run,from,to,length [m],bore [mm]\nSUCTION,NEW,S,6.5,200\nDISCHARGE,D,OUT,40,200\n")}}, "points.csv", fs.ModeSymlink),
+			"points.csv: found a symbolic link, want a CSV file that can be read"},
+	} {
+		_, err := ReadTables(c.folder, c.change)
+		var faults Faults
+		if !errors.As(err, &faults) || err.Error() != c.want {
+			t.Errorf("%s: %v, want %s", c.what, err, c.want)
+		}
+	}
+}
+
+// with puts something that is no plain file among the files.
+func with(files fstest.MapFS, name string, mode fs.FileMode) fstest.MapFS {
+	files[name] = &fstest.MapFile{Mode: mode}
+	return files
+}
+
+// On a disk a link is refused even where it leads to a table, and a pipe is not opened.
+func TestLinkOnDisk(t *testing.T) {
+	folder := t.TempDir()
+	for name, file := range good(t, "") {
+		if err := os.WriteFile(filepath.Join(folder, name), file.Data, 0o644); err != nil {
+			t.Fatal(err)
+		}
+	}
+	if err := os.Rename(filepath.Join(folder, "runs.csv"), filepath.Join(folder, "elsewhere")); err != nil {
+		t.Fatal(err)
+	}
+	if err := os.Symlink("elsewhere", filepath.Join(folder, "runs.csv")); err != nil {
+		t.Skip("no symbolic links here: ", err)
+	}
+	if _, err := ReadTables(os.DirFS(folder), nil); err == nil || err.Error() != "runs.csv: found a symbolic link, want a CSV file that can be read" {
+		t.Errorf("%v", err)
+	}
+}
+
+// Every spelling of a unit means one unit of its quantity, and that one.
+func TestUnitSpellings(t *testing.T) {
+	for _, q := range append([]Quantity{drop, capacity, ratio}, quantities...) {
+		for _, u := range q.Units {
+			for _, spelling := range append([]string{u.Name}, u.Aliases...) {
+				if got, known := q.unit(spelling); !known || got.Name != u.Name {
+					t.Errorf("%s: %q is %q, want %q", q.Name, spelling, got.Name, u.Name)
+				}
+			}
+		}
+	}
+	for _, c := range []struct {
+		q    Quantity
+		unit string
+	}{{pressure, "bara"}, {pressure, "psia"}, {drop, "barg"}, {drop, "bara"}, {absolutePressure, "bar(g)"}, {power, "mW"}, {pressure, "mPa"}, {flow, "m3"}, {length, ""}} {
+		if u, known := c.q.unit(c.unit); known {
+			t.Errorf("%s: %q counts as %s", c.q.Name, c.unit, u.Name)
+		}
 	}
 }
 
 // Many faults are told up to a bound, and counted beyond it.
 func TestManyFaults(t *testing.T) {
 	files := good(t, "")
-	var b strings.Builder
-	b.WriteString("point,kind,elevation [m]\n")
-	for range 80 {
-		b.WriteString("X,junction,high\n")
+	b := bytes.NewBuffer(files["points.csv"].Data)
+	for i := range 80 {
+		fmt.Fprintf(b, "X%d,junction,high,\n", i)
 	}
-	files["points.csv"] = &fstest.MapFile{Data: []byte(b.String())}
+	files["points.csv"] = &fstest.MapFile{Data: b.Bytes()}
 	_, err := ReadTables(files, nil)
 	if err == nil || strings.Count(err.Error(), "\n") != mostFaults || !strings.HasSuffix(err.Error(), "and 30 more") {
 		t.Errorf("%v", err)
+	}
+	var faults Faults
+	if !errors.As(err, &faults) || len(faults) != 80 || faults[79].Line != 85 {
+		t.Errorf("%d faults as data", len(faults))
 	}
 }
 
@@ -222,6 +323,12 @@ func TestNearest(t *testing.T) {
 	for found, want := range map[string]string{"minimun flow": "minimum flow", "baskt strainer": "basket strainer", "p2": "P1", "Basket": "basket strainer", "quay": ""} {
 		if got := nearest(found, names); got != want {
 			t.Errorf("%q: %q, want %q", found, got, want)
+		}
+	}
+	// A short name that a long one begins with is not near it, nor is a letter near another.
+	for _, c := range []struct{ found, name string }{{"s1 bypass", "S1"}, {"s1", "S1 bypass"}, {"x", "S"}} {
+		if got := nearest(c.found, []string{c.name}); got != "" {
+			t.Errorf("%q: %q, want none", c.found, got)
 		}
 	}
 }

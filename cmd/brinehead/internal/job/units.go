@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"regexp"
+	"slices"
 	"strconv"
 	"strings"
 )
@@ -45,26 +46,50 @@ const (
 // Quantities of the tables. A speed is kept in rpm, a salinity in g/kg, a temperature in Celsius, a flow coefficient Kv
 // in m3/h at 1 bar, a share as a fraction.
 var (
-	length      = Quantity{"length", []Unit{{"m", nil, 1, 0}, {"mm", nil, 1e-3, 0}, {"cm", nil, 1e-2, 0}, {"ft", []string{"feet"}, foot, 0}, {"in", []string{"inch", `"`}, inch, 0}}}
-	flow        = Quantity{"flow", []Unit{{"m3/h", []string{"m³/h", "m3/hr", "m³/hr", "cbm/h", "cum/h", "m^3/h"}, 1.0 / 3600, 0}, {"l/s", nil, 1e-3, 0}, {"l/min", nil, 1e-3 / 60, 0}, {"m3/s", []string{"m³/s", "m^3/s"}, 1, 0}, {"gpm (US)", []string{"gpm", "us gpm", "usgpm"}, usGallon / 60, 0}, {"gpm (UK)", []string{"uk gpm", "igpm"}, imperialGallon / 60, 0}}}
-	pressure    = Quantity{"pressure", []Unit{{"bar", []string{"barg", "bar g"}, 1e5, 0}, {"mbar", nil, 100, 0}, {"kPa", nil, 1e3, 0}, {"MPa", nil, 1e6, 0}, {"Pa", nil, 1, 0}, {"psi", []string{"psig"}, psi, 0}, {"mH2O", []string{"mwc", "mh₂o"}, metreOfWater, 0}, {"mmHg", nil, millimetreOfHg, 0}}}
-	power       = Quantity{"power", []Unit{{"kW", nil, 1e3, 0}, {"W", nil, 1, 0}, {"MW", nil, 1e6, 0}, {"hp", []string{"bhp"}, horsePower, 0}, {"PS", nil, metricHorsePower, 0}}}
-	temperature = Quantity{"temperature", []Unit{{"degC", []string{"°c", "c", "deg c", "celsius"}, 1, 0}, {"K", []string{"kelvin"}, 1, -273.15}, {"degF", []string{"°f", "f", "deg f", "fahrenheit"}, 1 / 1.8, -32 / 1.8}}}
-	speed       = Quantity{"speed", []Unit{{"rpm", []string{"1/min", "r/min", "min-1"}, 1, 0}}}
-	share       = Quantity{"share", []Unit{{"%", []string{"percent"}, 0.01, 0}, {"-", nil, 1, 0}}}
-	velocity    = Quantity{"velocity", []Unit{{"m/s", nil, 1, 0}, {"ft/s", []string{"fps"}, foot, 0}}}
-	capacity    = Quantity{"flow coefficient Kv", []Unit{{"m3/h", []string{"m³/h", "m3/hr", "m³/hr"}, 1, 0}}}
-	salinity    = Quantity{"salinity", []Unit{{"g/kg", nil, 1, 0}}}
-	angle       = Quantity{"angle", []Unit{{"deg", []string{"°", "degree", "degrees"}, math.Pi / 180, 0}, {"rad", nil, 1, 0}}}
-	area        = Quantity{"area", []Unit{{"m2", []string{"m²"}, 1, 0}, {"mm2", []string{"mm²"}, 1e-6, 0}, {"cm2", []string{"cm²"}, 1e-4, 0}, {"in2", nil, inch * inch, 0}}}
-	density     = Quantity{"density", []Unit{{"kg/m3", []string{"kg/m³"}, 1, 0}}}
-	current     = Quantity{"current", []Unit{{"A", nil, 1, 0}}}
-	ratio       = Quantity{"ratio", []Unit{{"-", []string{""}, 1, 0}}}
-	plain       = Quantity{"number", nil}
-	words       = Quantity{"text", nil}
+	length           = Quantity{"length", []Unit{{"m", nil, 1, 0}, {"mm", nil, 1e-3, 0}, {"cm", nil, 1e-2, 0}, {"ft", []string{"feet"}, foot, 0}, {"in", []string{"inch", `"`}, inch, 0}}}
+	flow             = Quantity{"flow", []Unit{{"m3/h", []string{"m³/h", "m3/hr", "m³/hr", "cbm/h", "cum/h", "m^3/h"}, 1.0 / 3600, 0}, {"l/s", nil, 1e-3, 0}, {"l/min", nil, 1e-3 / 60, 0}, {"m3/s", []string{"m³/s", "m^3/s"}, 1, 0}, {"gpm (US)", []string{"gpm", "us gpm", "usgpm"}, usGallon / 60, 0}, {"gpm (UK)", []string{"uk gpm", "igpm"}, imperialGallon / 60, 0}}}
+	pressure         = Quantity{"gauge pressure", pressureUnits("g")}
+	drop             = Quantity{"pressure difference", pressureUnits("")}
+	absolutePressure = Quantity{"absolute pressure", pressureUnits("a")}
+	power            = Quantity{"power", []Unit{{"kW", nil, 1e3, 0}, {"W", nil, 1, 0}, {"MW", nil, 1e6, 0}, {"hp", []string{"bhp"}, horsePower, 0}, {"PS", nil, metricHorsePower, 0}}}
+	temperature      = Quantity{"temperature", []Unit{{"degC", []string{"°c", "c", "deg c", "celsius"}, 1, 0}, {"K", []string{"kelvin"}, 1, -273.15}, {"degF", []string{"°f", "f", "deg f", "fahrenheit"}, 1 / 1.8, -32 / 1.8}}}
+	speed            = Quantity{"speed", []Unit{{"rpm", []string{"1/min", "r/min", "min-1"}, 1, 0}}}
+	share            = Quantity{"share", []Unit{{"%", []string{"percent"}, 0.01, 0}, {"-", nil, 1, 0}}}
+	velocity         = Quantity{"velocity", []Unit{{"m/s", nil, 1, 0}, {"ft/s", []string{"fps"}, foot, 0}}}
+	capacity         = Quantity{"flow coefficient Kv", []Unit{{"m3/h", []string{"m³/h", "m3/hr", "m³/hr"}, 1, 0}}}
+	salinity         = Quantity{"salinity", []Unit{{"g/kg", nil, 1, 0}}}
+	angle            = Quantity{"angle", []Unit{{"deg", []string{"°", "degree", "degrees"}, math.Pi / 180, 0}, {"rad", nil, 1, 0}}}
+	area             = Quantity{"area", []Unit{{"m2", []string{"m²"}, 1, 0}, {"mm2", []string{"mm²"}, 1e-6, 0}, {"cm2", []string{"cm²"}, 1e-4, 0}, {"in2", nil, inch * inch, 0}}}
+	density          = Quantity{"density", []Unit{{"kg/m3", []string{"kg/m³"}, 1, 0}}}
+	current          = Quantity{"current", []Unit{{"A", nil, 1, 0}}}
+	ratio            = Quantity{"ratio", []Unit{{"-", []string{""}, 1, 0}}}
+	plain            = Quantity{"number", nil}
+	words            = Quantity{"text", nil}
 )
 
-// unit finds a unit of the quantity by its name or alias, whatever the case where that tells no two apart.
+// quantities are those with units, for saying of what a misplaced unit is one.
+var quantities = []Quantity{length, flow, {"pressure", pressureUnits("")}, pressure, absolutePressure, power, temperature, speed, share, velocity, salinity, density, current, angle, area}
+
+// pressureUnits returns the units of pressure, which may bear the mark of a gauge pressure (g) or of an absolute one (a):
+// "barg", "bar g", "bar(g)". A unit without a mark is taken as what its column holds; with the other mark it is refused.
+func pressureUnits(mark string) []Unit {
+	units := []Unit{{"bar", nil, 1e5, 0}, {"mbar", nil, 100, 0}, {"kPa", nil, 1e3, 0}, {"MPa", nil, 1e6, 0}, {"Pa", nil, 1, 0}, {"psi", nil, psi, 0},
+		{"mH2O", []string{"mwc", "mh₂o"}, metreOfWater, 0}, {"mmHg", nil, millimetreOfHg, 0}}
+	if mark != "" {
+		for i, u := range units {
+			units[i].Aliases = append(u.Aliases, u.Name+mark, u.Name+" "+mark, u.Name+"("+mark+")", u.Name+" ("+mark+")")
+		}
+	}
+	return units
+}
+
+// takenAs says of unit spellings with more than one meaning which one is taken.
+var takenAs = map[string]string{
+	"gpm": "US gallons a minute (gpm (UK) are the imperial ones)",
+	"hp":  "mechanical horsepower of 745.7 W (PS is the metric one)",
+}
+
+// unit finds a unit of the quantity by its name or alias, whatever the case, but that M for mega must be a capital.
 func (q Quantity) unit(name string) (Unit, bool) {
 	name = strings.Join(strings.Fields(name), " ")
 	for _, u := range q.Units {
@@ -73,16 +98,29 @@ func (q Quantity) unit(name string) (Unit, bool) {
 		}
 	}
 	for _, u := range q.Units {
-		if strings.EqualFold(u.Name, name) && !strings.EqualFold(name, "mpa") {
-			return u, true
+		if strings.HasPrefix(u.Name, "M") && !strings.HasPrefix(name, "M") {
+			continue
 		}
-		for _, a := range u.Aliases {
-			if strings.EqualFold(a, name) {
-				return u, true
-			}
+		if strings.EqualFold(u.Name, name) || slices.ContainsFunc(u.Aliases, func(a string) bool { return strings.EqualFold(a, name) }) {
+			return u, true
 		}
 	}
 	return Unit{}, false
+}
+
+// hint says of what a unit that is none of the quantity's is one, or which of the quantity's is nearest.
+func (q Quantity) hint(unit string) string {
+	for _, u := range q.Units {
+		if strings.HasPrefix(u.Name, "M") && strings.EqualFold(u.Name, unit) {
+			return u.Name + " with a capital M is mega, with a small one milli"
+		}
+	}
+	for _, other := range quantities {
+		if _, known := other.unit(unit); known {
+			return quoted(unit) + " is a unit of " + other.Name
+		}
+	}
+	return nearestHint(unit, strings.Split(q.names(), ", "))
 }
 
 // names lists the units for messages.
@@ -123,7 +161,7 @@ func (i interval) words(u Unit) string {
 		parts = append(parts, word+number(i.high))
 	}
 	if parts == nil {
-		return "a number"
+		return aNumber
 	}
 	return strings.Join(parts, ", ")
 }

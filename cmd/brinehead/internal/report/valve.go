@@ -4,6 +4,7 @@ import (
 	"encoding/json"
 	"fmt"
 	"io"
+	"math"
 	"strings"
 
 	"brinehead/cmd/brinehead/internal/study"
@@ -21,19 +22,14 @@ func WriteValveJSON(w io.Writer, t *study.ValveTable) error {
 func WriteValveText(w io.Writer, t *study.ValveTable, u Units) error {
 	lines := []string{fmt.Sprintf("%s: three-way valve %s; port A %s, port B %s", t.Job, t.Valve, t.RunA, t.RunB)}
 	for _, c := range t.Conditions {
-		g := grid{left: 0, head: []string{"open %", "A " + u.Unit("m3/h"), "B " + u.Unit("m3/h"), "total"}}
-		for _, p := range c.Rows[0].Pumps {
-			g.head = append(g.head, p.Pump, "margin "+u.Unit("m"), "of best %")
-		}
+		g := grid{head: []string{"open %", "A " + u.Unit("m3/h"), "B " + u.Unit("m3/h"), "total", "least margin " + u.Unit("m"), "most of best %"}}
 		for _, r := range c.Rows {
-			row := []string{fmt.Sprintf("%.0f", 100*float64(r.Opening)), u.Text(r.A, "m3/h", 1), u.Text(r.B, "m3/h", 1), u.Text(r.Total, "m3/h", 1)}
-			for _, p := range r.Pumps {
-				row = append(row, u.Text(p.Flow, "m3/h", 1), u.Text(p.NPSHMargin, "m", 2), u.Text(100*p.BestShare, "", 0))
+			margin, share := study.Figure(math.Inf(1)), study.Figure(0)
+			for _, p := range r.Pumps { // a figure that is not known makes the outcome unknown
+				margin, share = study.Figure(math.Min(float64(margin), float64(p.NPSHMargin))), study.Figure(math.Max(float64(share), float64(p.BestShare)))
 			}
-			for len(row) < len(g.head) {
-				row = append(row, "")
-			}
-			g.rows = append(g.rows, row)
+			g.rows = append(g.rows, []string{fmt.Sprintf("%.0f", 100*float64(r.Opening)), u.Text(r.A, "m3/h", 1), u.Text(r.B, "m3/h", 1), u.Text(r.Total, "m3/h", 1),
+				u.Text(margin, "m", 2), u.Text(100*share, "", 0)})
 		}
 		lines = append(lines, "", c.Condition)
 		lines = append(lines, g.lines("  ")...)

@@ -3,6 +3,7 @@ package curves
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"brinehead/fluids"
 	"brinehead/hydraulics"
@@ -40,11 +41,18 @@ type Solved struct {
 
 // Solve finds the operating point of every pump and the flow in every run at once. The error is that of the
 // network's solution: unsound data, a *hydraulics.CutOff or a *hydraulics.NotConverged.
-func (p *Plant) Solve() (*Solved, error) {
+func (p *Plant) Solve() (*Solved, error) { return p.SolveNear(nil) }
+
+// SolveNear does the same, starting from the solution of a neighbouring condition of the same plant, which saves rounds.
+// It starts anew where near is nil, or where a curve droops: which of several meetings is found must not depend on the way.
+func (p *Plant) SolveNear(near *Solved) (*Solved, error) {
 	p.link()
 	solver, err := hydraulics.NewSolver(&p.Network)
 	if err != nil {
 		return nil, err
+	}
+	if near != nil && !slices.ContainsFunc(p.Pumps, func(u Pump) bool { return u.Curve != nil && u.Droops() }) {
+		solver.StartFrom(&near.Solution)
 	}
 	s := &Solved{Plant: p, solver: solver}
 	if err := solver.Solve(&s.Solution); err != nil {
@@ -123,6 +131,26 @@ func (s *Solved) GaugePressure(point int) float64 {
 		}
 	}
 	return (s.Heads[point] - s.Elevations[point] - velocityHead) * s.weight()
+}
+
+// NetFlow returns the flow (m3/s) that leaves a point into the plant, below 0 for one that enters it from there: what a tank
+// gives, what an overboard takes.
+func (s *Solved) NetFlow(point int) float64 {
+	out := 0.0
+	add := func(from, to int, flow float64) {
+		if from == point {
+			out += flow
+		} else if to == point {
+			out -= flow
+		}
+	}
+	for i, r := range s.Network.Runs {
+		add(r.From, r.To, s.RunFlows[i])
+	}
+	for i, u := range s.Plant.Pumps {
+		add(u.From, u.To, s.PumpFlows[i])
+	}
+	return out
 }
 
 // Demand is what the system asks of one pump at one flow.

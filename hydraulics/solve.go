@@ -207,6 +207,16 @@ const (
 	noFlow         = 1e-15 // m3/s: a flow below this is none
 )
 
+// StartFrom takes the flows of a solution of a like network, with the same runs and pumps in the same order, as the first
+// guess: a neighbouring condition is soon solved from it.
+func (s *Solver) StartFrom(near *Solution) {
+	if len(near.RunFlows) != len(s.network.Runs) || len(near.PumpFlows) != len(s.network.Pumps) {
+		return
+	}
+	copy(s.flow, near.RunFlows)
+	copy(s.flow[len(near.RunFlows):], near.PumpFlows)
+}
+
 // Solve finds the flows and heads. The solution is written into out, whose slices are used again where they are
 // large enough. The error is a *CutOff or a *NotConverged.
 func (s *Solver) Solve(out *Solution) error { return s.solve(out, -1, 0) }

@@ -6,6 +6,7 @@ import (
 	"math"
 	"os"
 	"path/filepath"
+	"runtime"
 	"strings"
 	"testing"
 
@@ -319,5 +320,47 @@ func TestThreeWayValve(t *testing.T) {
 		if code, _, stderr := brinehead("check", folder); code != exitInput || !strings.Contains(stderr, want) {
 			t.Errorf("%s: exit code %d, %s", name, code, stderr)
 		}
+	}
+}
+
+// One core or many, twice or once: the same bytes.
+func TestSameBytesOnAnyCores(t *testing.T) {
+	_, want, _ := brinehead("check", seawater, "--format", "json")
+	for _, cores := range []int{1, 2, 7} {
+		before := runtime.GOMAXPROCS(cores)
+		_, got, _ := brinehead("check", seawater, "--format", "json")
+		runtime.GOMAXPROCS(before)
+		if got != want {
+			t.Errorf("other bytes on %d cores", cores)
+		}
+	}
+}
+
+// What is odd of a whole condition is said: no pump running, a point near boiling, two tanks on one loop, valves that cut a
+// point off.
+func TestWarnings(t *testing.T) {
+	notes := func(folder, condition string) string {
+		answer, _ := checkJSON(t, folder, "--condition", condition)
+		return strings.Join(answer.Conditions[0].Notes, "\n")
+	}
+	idle := copyJob(t, freshwater, [3]string{"conditions.csv", "36,P1,15.8,1250", "36,none,15.8,1250"})
+	if got := notes(idle, "slow steaming"); !strings.Contains(got, "no pump runs in this condition") {
+		t.Errorf("%s", got)
+	}
+	hot := copyJob(t, freshwater, [3]string{"conditions.csv", `"tank low",fresh,45,P1,15.3`, `"tank low",fresh,97,P1,2.5`}, [3]string{"points.csv", "HEADER TANK,tank,15.2", "HEADER TANK,tank,2.5"})
+	if got := notes(hot, "tank low"); !strings.Contains(got, "SUCTION 1 is near boiling: ") {
+		t.Errorf("%s", got)
+	}
+	two := copyJob(t, freshwater, [3]string{"points.csv", "RETURN,junction,5.0,,", "RETURN,tank,5.0,14,"})
+	if got := notes(two, "both pumps"); !strings.Contains(got, "more than one tank holds the circuit") {
+		t.Errorf("%s", got)
+	}
+	cut := copyJob(t, freshwater, [3]string{"conditions.csv", "V30 opening [%]", "V30 opening [%],LO COOLER state,ENGINE RETURN state"}, [3]string{"conditions.csv", ",100\n", ",100,,\n"}, [3]string{"conditions.csv", ",50\n", ",50,,\n"})
+	if got := notes(cut, "tank low"); strings.Contains(got, "cut off") {
+		t.Errorf("%s", got)
+	}
+	cut = copyJob(t, cut, [3]string{"conditions.csv", ",100,,\n", ",100,shut,shut\n"}, [3]string{"runs.csv", "AIR COOLER,AIR COOLER IN,RETURN", "AIR COOLER,AIR COOLER IN,COOLER IN"})
+	if got := notes(cut, "tank low"); !strings.Contains(got, "RETURN is cut off by shut runs: its pressure is not known") {
+		t.Errorf("%s", got)
 	}
 }

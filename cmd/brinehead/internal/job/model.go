@@ -599,7 +599,7 @@ func (b *builder) pumps() {
 		from, to := b.point[fold(r.From.Value)], b.point[fold(r.To.Value)]
 		p := curves.Pump{Name: r.Pump.Value, From: from, To: to,
 			Datum:   r.Datum.Or(b.plant.Elevations[from]),
-			Running: len(running) == 0 || slices.ContainsFunc(running, func(t Text) bool { return fold(t.Value) == fold(r.Pump.Value) }),
+			Running: !b.condition.NoneRuns && (len(running) == 0 || slices.ContainsFunc(running, func(t Text) bool { return fold(t.Value) == fold(r.Pump.Value) })),
 			Motor:   r.Motor.Or(math.NaN()),
 			LeakKv:  b.number(r.Pump, "leak", r.Leak).Or(0),
 			Pump: pumps.Pump{Curve: b.curve(r), Speed: b.number(r.Pump, "speed", r.Speed).Or(0),

@@ -137,6 +137,10 @@ func (r *reader) condition(row *ConditionRow, hasSea bool, pumps roll) {
 	if fold(row.Water.Value) == "fresh" && row.Salinity.Given && row.Salinity.Value != 0 {
 		r.fault(row.Salinity.Place, "a salinity of fresh water", "none, or the water sea", "")
 	}
+	if fold(row.Running.Value) == "none" && !pumps.has("none") {
+		row.NoneRuns = true
+		return
+	}
 	for _, name := range splitNames(row.Running, pumps.has) {
 		r.refer(name, pumps, "a pump of pumps.csv")
 		row.RunningList = append(row.RunningList, name)

@@ -158,6 +158,7 @@ type ConditionRow struct {
 	Running     Text   `csv:"running"`
 
 	RunningList []Text     `csv:"-"` // the pumps named in Running
+	NoneRuns    bool       `csv:"-"` // Running says none
 	Overrides   []Override `csv:"-"` // what the condition sets for single elements
 }
 

@@ -178,10 +178,22 @@ func conditionLines(c *study.Condition, u Units, withRuns bool) []string {
 		lines = append(lines, "")
 		lines = append(lines, pointGrid(c, u).lines("  ")...)
 	}
+	if withRuns && c.Solution.Converged {
+		lines = append(lines, "")
+		lines = append(lines, wrap("  ", "    ", fmt.Sprintf("Solved in %d rounds: flows balance to %.1g of the greatest, heads to %.1g m (worst at %s).", c.Solution.Rounds,
+			float64(c.Solution.MassResidual), float64(c.Solution.HeadResidual), worst(c.Solution.Worst)))...)
+	}
 	for _, n := range c.Notes {
 		lines = append(lines, wrap("  ", "    ", "Note: "+n)...)
 	}
 	return lines
+}
+
+func worst(name string) string {
+	if name == "" {
+		return "none"
+	}
+	return name
 }
 
 func waterText(c *study.Condition, u Units) string {

@@ -4,8 +4,10 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"runtime"
 	"slices"
 	"strings"
+	"sync"
 
 	"brinehead/cmd/brinehead/internal/job"
 	"brinehead/curves"
@@ -142,24 +144,31 @@ func Checked(j *job.Job, only []string, version string) (*Check, error) {
 		only = j.Conditions()
 	}
 	limits := newLimits(j)
-	answer := &Check{Job: j.Name, Version: version, Defaults: limits.defaults}
-	for _, name := range only {
-		built, err := j.Build(name)
-		if err != nil {
-			return nil, err
+	answer := &Check{Job: j.Name, Version: version, Defaults: limits.defaults, Conditions: make([]Condition, len(only))}
+	faults, failures := make([]error, len(only)), make([]error, len(only))
+	one := func(i int, near *curves.Solved) {
+		answer.Conditions[i], faults[i], failures[i] = checkedCondition(j, limits, only[i], near)
+	}
+	one(0, nil)
+	// The others start from the first one's solution, whichever is done first, on as many cores as there are.
+	var work sync.WaitGroup
+	slots := make(chan struct{}, runtime.GOMAXPROCS(0))
+	for i := 1; i < len(only); i++ {
+		work.Go(func() {
+			slots <- struct{}{}
+			one(i, answer.Conditions[0].solved)
+			<-slots
+		})
+	}
+	work.Wait()
+	for i := range only {
+		if faults[i] != nil {
+			return nil, faults[i]
 		}
-		c := Condition{Condition: built.Row.Condition.Value, Water: waterOf(built.Plant), Draught: Figure(built.Row.Draught.Or(math.NaN())), built: built}
-		c.solved, err = c.solve()
-		if err != nil {
-			answer.Failed = append(answer.Failed, &NoSolution{c.Condition, err})
-			c.Notes = append(c.Notes, "no solution: "+err.Error())
-			c.Solution = Solution{MassResidual: unknown, HeadResidual: unknown}
-		} else {
-			c.report(j)
+		if failures[i] != nil {
+			answer.Failed = append(answer.Failed, failures[i])
 		}
-		c.Findings = limits.judge(&c, err)
-		answer.supply(built.Supplied)
-		answer.Conditions = append(answer.Conditions, c)
+		answer.supply(answer.Conditions[i].built.Supplied)
 	}
 	if len(only) == len(j.Conditions()) {
 		if err := wrongWay(j, answer.Conditions).Err(); err != nil {
@@ -167,6 +176,24 @@ func Checked(j *job.Job, only []string, version string) (*Check, error) {
 		}
 	}
 	return answer, nil
+}
+
+// checkedCondition solves and judges one condition. A fault is of the tables; a failure is a *NoSolution.
+func checkedCondition(j *job.Job, limits *limits, name string, near *curves.Solved) (c Condition, fault, failure error) {
+	built, err := j.Build(name)
+	if err != nil {
+		return c, err, nil
+	}
+	c = Condition{Condition: built.Row.Condition.Value, Water: waterOf(built.Plant), Draught: Figure(built.Row.Draught.Or(math.NaN())), built: built}
+	if c.solved, err = c.solve(near); err != nil {
+		failure = &NoSolution{c.Condition, err}
+		c.Notes = append(c.Notes, "no solution: "+err.Error())
+		c.Solution = Solution{MassResidual: unknown, HeadResidual: unknown}
+	} else {
+		c.report(j)
+	}
+	c.Findings = limits.judge(&c, err)
+	return c, nil, failure
 }
 
 // Supplied is a figure that the program has put in where the tables left it open.
@@ -241,12 +268,39 @@ func (c *Condition) report(j *job.Job) {
 			c.Notes = append(c.Notes, fmt.Sprintf("flow in %s is beyond the range of the friction law (Re %.3g)", r.Run, float64(r.Reynolds)))
 		}
 	}
+	c.warn()
 	c.Solution = Solution{true, s.Rounds, Figure(s.MassResidual), Figure(s.HeadResidual), s.Worst}
 	outlets(j, c)
 	if sound {
 		c.Notes = append(c.Notes, c.remarks...)
 	} else {
 		c.withhold()
+	}
+}
+
+// boilingMargin is the head over the vapour pressure under which a point is called near boiling, m (common practice).
+const boilingMargin = 2.0
+
+// warn notes what is odd of a whole condition: no pump runs, a point near boiling, tanks between which water runs.
+func (c *Condition) warn() {
+	s := c.solved
+	if len(s.Plant.Pumps) > 0 && !slices.ContainsFunc(s.Plant.Pumps, func(u curves.Pump) bool { return u.Running }) {
+		c.Notes = append(c.Notes, "no pump runs in this condition")
+	}
+	weight := s.Water.Density * fluids.Gravity
+	for i, p := range s.Network.Points {
+		if margin := (s.Atmosphere + s.GaugePressure(i) - s.Water.VapourPressure) / weight; margin < boilingMargin && !p.Fixed {
+			c.remarks = append(c.remarks, fmt.Sprintf("%s is near boiling: %.1f m over the vapour pressure, less than %g m (common practice)", p.Name, margin, boilingMargin))
+		}
+	}
+	var held []string
+	for i, p := range s.Network.Points {
+		if p.Fixed && !c.built.SeaInlets[i] && !c.built.Overboards[i] && math.Abs(s.NetFlow(i)) > 1e-6 {
+			held = append(held, fmt.Sprintf("%s %s m3/h", p.Name, short(s.NetFlow(i)*3600, 3)))
+		}
+	}
+	if len(held) > 1 && c.Water.Kind == "fresh" {
+		c.remarks = append(c.remarks, "more than one tank holds the circuit, and water runs from one to another (out of each: "+strings.Join(held, ", ")+"); a closed loop hangs on one tank")
 	}
 }
 
@@ -318,8 +372,8 @@ func beyondCurve(s *curves.Solved, pump int) string {
 
 // solve solves the condition. Where the siphon of an overboard line would break, by its rule, the line is taken as falling
 // from its high point, and solved anew.
-func (c *Condition) solve() (*curves.Solved, error) {
-	s, err := c.built.Solve()
+func (c *Condition) solve(near *curves.Solved) (*curves.Solved, error) {
+	s, err := c.built.SolveNear(near)
 	if err != nil {
 		return nil, err
 	}

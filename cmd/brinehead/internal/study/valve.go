@@ -113,7 +113,7 @@ func (t *ValveTable) at(j *job.Job, name string, opening, extra float64) (*Condi
 		}
 	}
 	c := &Condition{Condition: built.Row.Condition.Value, built: built}
-	if c.solved, err = c.solve(); err != nil {
+	if c.solved, err = c.solve(nil); err != nil {
 		c.Notes = append(c.Notes, "no solution: "+err.Error())
 		return c, nil
 	}

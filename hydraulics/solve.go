@@ -32,11 +32,13 @@ type Solver struct {
 	right    blas64.General
 	groups   partition
 
-	flow, next, loss, weight []float64 // by link; weight is 1 over the slope of the loss
-	shut                     []bool    // by link: passes nothing in this solution
-	head, draw               []float64 // by point
-	held                     []bool    // by point: scratch of isolate
-	tees                     *teeSolver
+	flow, next           []float64 // by link, m3/s: now, and after the step in hand
+	loss, weight         []float64 // by link, at flow; weight is 1 over the slope of the loss
+	nextLoss, nextWeight []float64 // by link, at next
+	shut                 []bool    // by link: passes nothing in this solution
+	head, draw           []float64 // by point
+	held                 []bool    // by point: scratch of isolate
+	tees                 *teeSolver
 }
 
 // link is a run or a pump, ready to be solved.
@@ -76,6 +78,7 @@ func NewSolver(n *Network) (*Solver, error) {
 	links, points := len(s.links), len(n.Points)
 	s.flow, s.next = make([]float64, links), make([]float64, links)
 	s.loss, s.weight = make([]float64, links), make([]float64, links)
+	s.nextLoss, s.nextWeight = make([]float64, links), make([]float64, links)
 	s.shut = make([]bool, links)
 	s.head, s.draw = make([]float64, points), make([]float64, points)
 	s.held, s.row = make([]bool, points), make([]int, points)
@@ -349,9 +352,9 @@ func (s *Solver) iterate(rounds *int) error {
 	}
 	const near, patience = 100, 3 // times the tolerance; rounds
 	excess, worst, stalled := math.Inf(1), -1, 0
+	s.linearise(s.flow, s.loss, s.weight)
 	for first := true; *rounds < greatestRounds; first = false {
 		*rounds++
-		s.linearise()
 		if err := s.step(); err != nil {
 			return err
 		}
@@ -361,41 +364,43 @@ func (s *Solver) iterate(rounds *int) error {
 		if excess < near && excess > last/2 {
 			stalled++
 		}
-		settled := excess <= 1 || stalled >= patience
-		share := 1.0
-		if settled {
+		if excess <= 1 || stalled >= patience {
 			s.balance() // once more: the weights of a network span many decades
 			s.balance()
-		} else if !first { // before the first step the flows satisfy no continuity, and the content says nothing
-			share = s.shorten()
-		}
-		for k := range s.flow {
-			if share == 1 {
-				s.flow[k] = s.next[k] // exactly: continuity must not be lost to rounding
-			} else {
-				s.flow[k] += share * (s.next[k] - s.flow[k])
-			}
-		}
-		if settled {
+			copy(s.flow, s.next)
 			return nil
 		}
+		s.linearise(s.next, s.nextLoss, s.nextWeight)
+		share := 1.0
+		if !first { // before the first step the flows satisfy no continuity, and the content says nothing
+			share = s.shorten()
+		}
+		if share == 1 { // exactly: continuity must not be lost to rounding
+			s.flow, s.next = s.next, s.flow
+			s.loss, s.nextLoss = s.nextLoss, s.loss
+			s.weight, s.nextWeight = s.nextWeight, s.weight
+			continue
+		}
+		for k := range s.flow {
+			s.flow[k] += share * (s.next[k] - s.flow[k])
+		}
+		s.linearise(s.flow, s.loss, s.weight)
 	}
-	s.linearise()
 	if err := s.step(); err != nil {
 		return err
 	}
 	return &NotConverged{Rounds: *rounds, Step: math.Abs(s.next[worst] - s.flow[worst]), Where: s.name(worst)}
 }
 
-// linearise finds the loss and the weight of every open link at its present flow.
-func (s *Solver) linearise() {
+// linearise finds the losses and weights of the open links at their flows.
+func (s *Solver) linearise(flow, loss, weight []float64) {
 	for k := range s.links {
 		if s.shut[k] {
-			s.loss[k], s.weight[k] = 0, 0
+			loss[k], weight[k] = 0, 0
 			continue
 		}
-		loss, slope := s.links[k].lossAt(s.flow[k])
-		s.loss[k], s.weight[k] = loss, 1/slope
+		h, slope := s.links[k].lossAt(flow[k])
+		loss[k], weight[k] = h, 1/slope
 	}
 }
 
@@ -575,11 +580,11 @@ func (s *Solver) balance() {
 // side; then one near its least along the step.
 func (s *Solver) shorten() float64 {
 	const enough = 0.5 // of the slope at the start
-	start := s.contentSlope(0)
+	start := s.contentSlope(s.loss)
 	if !(start < 0) {
 		return 1 // rounding: the step is as good as none
 	}
-	end := s.contentSlope(1)
+	end := s.contentSlope(s.nextLoss)
 	if end <= -enough*start {
 		return 1
 	}
@@ -588,7 +593,7 @@ func (s *Solver) shorten() float64 {
 	for range 40 {
 		share = low - lowSlope*(high-low)/(highSlope-lowSlope)
 		share = math.Min(math.Max(share, low+0.05*(high-low)), high-0.05*(high-low))
-		slope := s.contentSlope(share)
+		slope := s.contentSlopeAt(share)
 		if math.Abs(slope) <= -enough*start {
 			return share
 		}
@@ -601,8 +606,18 @@ func (s *Solver) shorten() float64 {
 	return share
 }
 
-// contentSlope returns the derivative of the content along the step, at a share of it.
-func (s *Solver) contentSlope(share float64) float64 {
+// contentSlopeAt returns the derivative of the content along the step, at a share of it.
+func (s *Solver) contentSlopeAt(share float64) float64 {
+	for k := range s.links {
+		if s.weight[k] != 0 {
+			s.nextLoss[k], _ = s.links[k].lossAt(s.flow[k] + share*(s.next[k]-s.flow[k]))
+		}
+	}
+	return s.contentSlope(s.nextLoss)
+}
+
+// contentSlope returns the derivative of the content along the step where the links have these losses.
+func (s *Solver) contentSlope(losses []float64) float64 {
 	points := s.network.Points
 	sum := 0.0
 	for k := range s.links {
@@ -611,7 +626,7 @@ func (s *Solver) contentSlope(share float64) float64 {
 			continue
 		}
 		l := &s.links[k]
-		loss, _ := l.lossAt(s.flow[k] + share*change)
+		loss := losses[k]
 		if points[l.from].Fixed {
 			loss -= points[l.from].Head
 		}

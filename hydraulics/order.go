@@ -50,3 +50,32 @@ func bandOrder(neighbours [][]int) []int {
 	slices.Reverse(order)
 	return order
 }
+
+// takeOffTwigs takes off, again and again, the points that have one neighbour left or none. It returns them in that order,
+// and for each point what it hung on when it went, -1 for nothing. Points that stand in a loop, or between two, stay.
+func takeOffTwigs(neighbours [][]int) (order, on []int) {
+	left := make([]int, len(neighbours)) // neighbours still there
+	gone := make([]bool, len(neighbours))
+	on = make([]int, len(neighbours))
+	for i, near := range neighbours {
+		left[i], on[i] = len(near), -1
+		if left[i] <= 1 {
+			order = append(order, i)
+			gone[i] = true
+		}
+	}
+	for next := 0; next < len(order); next++ {
+		point := order[next]
+		for _, n := range neighbours[point] {
+			if on[n] == point {
+				continue // it hung on this one
+			}
+			on[point] = n
+			if left[n]--; left[n] <= 1 && !gone[n] {
+				order = append(order, n)
+				gone[n] = true
+			}
+		}
+	}
+	return order, on
+}

@@ -25,11 +25,12 @@ type Solver struct {
 	network *Network
 	links   []link // runs, then pumps
 
-	row      []int // row of the matrix of each point, -1 for a fixed one or one cut off
-	order    []int // points in the order of their rows
+	row      []int  // row of the matrix of each point, -1 for a fixed one
+	order    []int  // points in the order of their rows: first those of the band, then the twigs
+	twigs    []twig // points that hang on one other alone, in the order in which they are taken off
 	band     blas64.SymmetricBand
 	triangle blas64.TriangularBand // its factor, in the same memory
-	right    blas64.General
+	right    []float64             // by row
 	groups   partition
 
 	flow, next           []float64 // by link, m3/s: now, and after the step in hand
@@ -142,38 +143,79 @@ func newPumpLink(p PumpLink, nu float64) link {
 	return link{from: p.From, to: p.To, drive: p.Drive, oneWay: reversePump, start: start}
 }
 
+// twig is a point that hangs on one other point, its own twigs taken off: its equation is worked by hand, without a place in
+// the band. A tree is nothing but twigs, whose cost goes with their number however they branch.
+type twig struct {
+	parent        int // row of the point it hangs on, -1 for none that is free
+	diagonal, off float64
+}
+
 // number gives the points that are not fixed their rows and makes the matrix.
 func (s *Solver) number() {
-	free := make([]int, 0, len(s.network.Points)) // points that are not fixed
-	local := make([]int, len(s.network.Points))
-	for i, p := range s.network.Points {
-		if !p.Fixed {
-			local[i] = len(free)
-			free = append(free, i)
+	neighbours := make([][]int, len(s.network.Points))
+	join := func(a, b int) {
+		for _, n := range neighbours[a] {
+			if n == b {
+				return
+			}
 		}
+		neighbours[a] = append(neighbours[a], b)
 	}
-	neighbours := make([][]int, len(free))
 	for _, l := range s.links {
 		if !s.network.Points[l.from].Fixed && !s.network.Points[l.to].Fixed {
-			a, b := local[l.from], local[l.to]
-			neighbours[a] = append(neighbours[a], b)
-			neighbours[b] = append(neighbours[b], a)
+			join(l.from, l.to)
+			join(l.to, l.from)
 		}
 	}
-	s.order = bandOrder(neighbours)
-	for row, i := range s.order {
-		s.order[row] = free[i]
-		s.row[free[i]] = row
+	hanging, on := takeOffTwigs(neighbours)
+	isTwig := make([]bool, len(neighbours))
+	for _, point := range hanging {
+		isTwig[point] = true
+	}
+	var core []int // free points that are no twigs
+	local := make([]int, len(neighbours))
+	for i, p := range s.network.Points {
+		if !p.Fixed && !isTwig[i] {
+			local[i] = len(core)
+			core = append(core, i)
+		}
+	}
+	inCore := make([][]int, len(core))
+	for k, point := range core {
+		for _, n := range neighbours[point] {
+			if !isTwig[n] {
+				inCore[k] = append(inCore[k], local[n])
+			}
+		}
+	}
+	for row, k := range bandOrder(inCore) {
+		s.order = append(s.order, core[k])
+		s.row[core[k]] = row
+	}
+	for _, point := range hanging {
+		if !s.network.Points[point].Fixed {
+			s.row[point] = len(s.order)
+			s.order = append(s.order, point)
+		}
+	}
+	for _, point := range hanging {
+		if !s.network.Points[point].Fixed {
+			t := twig{parent: -1}
+			if on[point] >= 0 {
+				t.parent = s.row[on[point]]
+			}
+			s.twigs = append(s.twigs, t)
+		}
 	}
 	width := 0
-	for _, l := range s.links {
-		if !s.network.Points[l.from].Fixed && !s.network.Points[l.to].Fixed {
-			width = max(width, s.row[l.from]-s.row[l.to], s.row[l.to]-s.row[l.from])
+	for k, near := range inCore {
+		for _, n := range near {
+			width = max(width, s.row[core[k]]-s.row[core[n]])
 		}
 	}
-	size := len(s.order)
+	size := len(core)
 	s.band = blas64.SymmetricBand{Uplo: blas.Upper, N: size, K: width, Stride: width + 1, Data: make([]float64, size*(width+1))}
-	s.right = blas64.General{Rows: size, Cols: 1, Stride: 1, Data: make([]float64, size)}
+	s.right = make([]float64, len(s.order))
 }
 
 // Solution is the state of a network.
@@ -451,12 +493,10 @@ func (s *Solver) step() error {
 			return fmt.Errorf("hydraulics: the matrix of the network is singular")
 		}
 	}
-	if len(s.order) > 0 {
-		lapack64.Pbtrs(s.triangle, s.right)
-	}
+	s.substitute()
 	for row, point := range s.order {
 		if !math.IsNaN(s.head[point]) {
-			s.head[point] = s.right.Data[row]
+			s.head[point] = s.right[row]
 		}
 	}
 	for k := range s.links {
@@ -472,46 +512,86 @@ func (s *Solver) step() error {
 
 // factor sets up the equations of the heads and factors their matrix; false where rounding has made it singular.
 func (s *Solver) factor() bool {
-	if len(s.order) == 0 {
-		return true
+	clear(s.band.Data)
+	for k := range s.twigs {
+		s.twigs[k].diagonal, s.twigs[k].off = 0, 0
 	}
-	data, right, stride := s.band.Data, s.right.Data, s.band.Stride
-	clear(data)
 	for row, point := range s.order {
-		right[row] = -s.draw[point]
+		s.right[row] = -s.draw[point]
 		if math.IsNaN(s.head[point]) {
-			data[row*stride] = 1 // cut off: kept in the matrix as a row of its own
-			right[row] = 0
+			*s.diagonal(row) = 1 // cut off: kept in the matrix as a row of its own
+			s.right[row] = 0
 		}
 	}
 	for k := range s.links {
 		if w := s.weight[k]; w > 0 {
 			from, to := s.links[k].from, s.links[k].to
 			constant := s.flow[k] - w*s.loss[k] // next = constant + w (Hfrom - Hto)
-			s.addToBand(from, to, -constant, w)
-			s.addToBand(to, from, constant, w)
+			s.addToMatrix(from, to, -constant, w)
+			s.addToMatrix(to, from, constant, w)
 		}
+	}
+	for k := range s.twigs {
+		t := &s.twigs[k]
+		if !(t.diagonal > 0) {
+			return false
+		}
+		if t.parent >= 0 {
+			*s.diagonal(t.parent) -= t.off / t.diagonal * t.off
+		}
+	}
+	if s.band.N == 0 {
+		return true
 	}
 	var ok bool
 	s.triangle, ok = lapack64.Pbtrf(s.band)
 	return ok
 }
 
-// addToBand adds one end of a link of weight w to the equation of its point.
-func (s *Solver) addToBand(point, other int, inflow, w float64) {
-	points := s.network.Points
-	if points[point].Fixed {
+// diagonal returns a row's element of the diagonal.
+func (s *Solver) diagonal(row int) *float64 {
+	if row < s.band.N {
+		return &s.band.Data[row*s.band.Stride]
+	}
+	return &s.twigs[row-s.band.N].diagonal
+}
+
+// addToMatrix adds one end of a link of weight w to the equation of its point.
+func (s *Solver) addToMatrix(point, other int, inflow, w float64) {
+	row, column := s.row[point], s.row[other]
+	if row < 0 {
 		return
 	}
-	row := s.row[point]
-	s.right.Data[row] += inflow
-	s.band.Data[row*s.band.Stride] += w
-	if points[other].Fixed {
-		s.right.Data[row] += w * points[other].Head
-		return
-	}
-	if column := s.row[other]; column > row {
+	s.right[row] += inflow
+	*s.diagonal(row) += w
+	switch {
+	case column < 0:
+		s.right[row] += w * s.network.Points[other].Head
+	case row >= s.band.N: // a twig: its one neighbour, or a twig of its own, which has the element
+		if t := &s.twigs[row-s.band.N]; t.parent == column {
+			t.off -= w
+		}
+	case column > row && column < s.band.N:
 		s.band.Data[row*s.band.Stride+column-row] -= w
+	}
+}
+
+// substitute solves for the right side in hand with the matrix factored last; the answer takes its place.
+func (s *Solver) substitute() {
+	for k, t := range s.twigs {
+		if t.parent >= 0 {
+			s.right[t.parent] -= t.off / t.diagonal * s.right[s.band.N+k]
+		}
+	}
+	if s.band.N > 0 {
+		lapack64.Pbtrs(s.triangle, blas64.General{Rows: s.band.N, Cols: 1, Stride: 1, Data: s.right[:s.band.N]})
+	}
+	for k := len(s.twigs) - 1; k >= 0; k-- {
+		t, row := &s.twigs[k], s.band.N+k
+		if t.parent >= 0 {
+			s.right[row] -= t.off * s.right[t.parent]
+		}
+		s.right[row] /= t.diagonal
 	}
 }
 
@@ -541,10 +621,7 @@ func (s *Solver) stepSize() (excess float64, worst int) {
 // balance corrects heads and next flows for what rounding has put into the points' balance of flow: one round of
 // iterative refinement with the matrix factored last.
 func (s *Solver) balance() {
-	if len(s.order) == 0 {
-		return
-	}
-	right := s.right.Data
+	right := s.right
 	for row, point := range s.order {
 		right[row] = -s.draw[point]
 		if math.IsNaN(s.head[point]) {
@@ -560,7 +637,7 @@ func (s *Solver) balance() {
 			right[row] += s.next[k]
 		}
 	}
-	lapack64.Pbtrs(s.triangle, s.right)
+	s.substitute()
 	correction := func(point int) float64 {
 		if row := s.row[point]; row >= 0 {
 			return right[row]
@@ -699,7 +776,7 @@ func (s *Solver) report(out *Solution, forced int, forcedFlow float64) {
 	}
 	out.HeadResidual, out.MassResidual, out.Worst = 0, 0, ""
 	greatestFlow := 0.0
-	imbalance := s.right.Data // by row
+	imbalance := s.right // by row
 	for row, point := range s.order {
 		imbalance[row] = s.draw[point]
 		greatestFlow = math.Max(greatestFlow, math.Abs(s.draw[point]))

@@ -1,7 +1,6 @@
 package main
 
 import (
-	"bytes"
 	"fmt"
 	"io"
 	"strings"
@@ -38,29 +37,13 @@ func newCatalogue(s streams) *cobra.Command {
 			if err != nil {
 				return err
 			}
-			var text bytes.Buffer
-			if out != "" {
-				if err := report.WriteCatalogueCSV(&text, answer); err != nil {
-					return err
-				}
-				if err := writeFiles(out, []report.File{{Name: "catalogue-" + answer.List + ".csv", Content: bytes.Clone(text.Bytes())}}); err != nil {
-					return err
-				}
-				text.Reset()
-			}
-			switch format {
-			case "json":
-				err = report.WriteCatalogueJSON(&text, answer)
-			case "csv":
-				err = report.WriteCatalogueCSV(&text, answer)
-			default:
-				err = report.WriteCatalogueText(&text, answer)
-			}
-			if err != nil {
+			list := shown{answer,
+				func(w io.Writer) error { return report.WriteCatalogueText(w, answer) },
+				func(w io.Writer) error { return report.WriteCatalogueCSV(w, answer) }}
+			if err := writeCSV(out, "catalogue-"+answer.List+".csv", list); err != nil {
 				return err
 			}
-			_, err = io.Copy(s.out, &text)
-			return err
+			return s.show(format, list)
 		},
 	}
 	c.Flags().StringVar(&find, "find", "", "only entries that hold these words")

@@ -1,7 +1,6 @@
 package main
 
 import (
-	"bytes"
 	"io"
 
 	"github.com/spf13/cobra"
@@ -57,19 +56,10 @@ func check(s streams, o common, folder string) error {
 			return err
 		}
 	}
-	var text bytes.Buffer // whole or not at all
-	switch o.format {
-	case "json":
-		err = report.WriteCheckJSON(&text, answer)
-	case "csv":
-		err = report.WriteDutyCSV(&text, answer, o.units)
-	default:
-		err = report.WriteCheckText(&text, answer, o.units)
-	}
+	err = s.show(o.format, shown{answer,
+		func(w io.Writer) error { return report.WriteCheckText(w, answer, o.units) },
+		func(w io.Writer) error { return report.WriteDutyCSV(w, answer, o.units) }})
 	if err != nil {
-		return err
-	}
-	if _, err := io.Copy(s.out, &text); err != nil {
 		return err
 	}
 	if stuck != nil {
@@ -94,27 +84,11 @@ func valveStroke(s streams, o common, folder, valve string) error {
 	if err != nil {
 		return err
 	}
-	var text bytes.Buffer
-	if o.out != "" {
-		if err := report.WriteValveCSV(&text, answer, o.units); err != nil {
-			return err
-		}
-		if err := writeFiles(o.out, []report.File{{Name: "valve.csv", Content: bytes.Clone(text.Bytes())}}, folder, o.change); err != nil {
-			return err
-		}
-		text.Reset()
-	}
-	switch o.format {
-	case "json":
-		err = report.WriteValveJSON(&text, answer)
-	case "csv":
-		err = report.WriteValveCSV(&text, answer, o.units)
-	default:
-		err = report.WriteValveText(&text, answer, o.units)
-	}
-	if err != nil {
+	stroke := shown{answer,
+		func(w io.Writer) error { return report.WriteValveText(w, answer, o.units) },
+		func(w io.Writer) error { return report.WriteValveCSV(w, answer, o.units) }}
+	if err := writeCSV(o.out, "valve.csv", stroke, folder, o.change); err != nil {
 		return err
 	}
-	_, err = io.Copy(s.out, &text)
-	return err
+	return s.show(o.format, stroke)
 }

@@ -1,6 +1,7 @@
 package main
 
 import (
+	"bytes"
 	"errors"
 	"fmt"
 	"io"
@@ -117,6 +118,41 @@ func completeFrom(c *cobra.Command, flag string, values []string) {
 	if err := c.RegisterFlagCompletionFunc(flag, cobra.FixedCompletions(values, cobra.ShellCompDirectiveNoFileComp)); err != nil {
 		panic("a flag just made is not there: " + err.Error())
 	}
+}
+
+// shown is an answer in the forms a command can print.
+type shown struct {
+	answer    any // for JSON
+	text, csv func(io.Writer) error
+}
+
+// show prints an answer in a format of formats, whole or not at all.
+func (s streams) show(format string, a shown) error {
+	write := a.text
+	switch format {
+	case "json":
+		write = func(w io.Writer) error { return report.WriteJSON(w, a.answer) }
+	case "csv":
+		write = a.csv
+	}
+	var text bytes.Buffer
+	if err := write(&text); err != nil {
+		return err
+	}
+	_, err := io.Copy(s.out, &text)
+	return err
+}
+
+// writeCSV writes an answer's CSV into the folder of --out, where one is given.
+func writeCSV(out, name string, a shown, inputs ...string) error {
+	if out == "" {
+		return nil
+	}
+	var text bytes.Buffer
+	if err := a.csv(&text); err != nil {
+		return err
+	}
+	return writeFiles(out, []report.File{{Name: name, Content: text.Bytes()}}, inputs...)
 }
 
 // oneOf refuses a flag's value that is not among those it may have.

@@ -1,10 +1,8 @@
 package main
 
 import (
-	"bytes"
 	"fmt"
 	"io"
-	"slices"
 	"strconv"
 	"strings"
 
@@ -71,29 +69,13 @@ func water(s streams, o waterFlags) error {
 	if err != nil {
 		return err
 	}
-	var text bytes.Buffer
-	if o.out != "" {
-		if err := report.WriteWaterCSV(&text, answer, units); err != nil {
-			return err
-		}
-		if err := writeFiles(o.out, []report.File{{Name: "water.csv", Content: slices.Clone(text.Bytes())}}); err != nil {
-			return err
-		}
-		text.Reset()
-	}
-	switch o.format {
-	case "json":
-		err = report.WriteWaterJSON(&text, answer)
-	case "csv":
-		err = report.WriteWaterCSV(&text, answer, units)
-	default:
-		err = report.WriteWaterText(&text, answer, units)
-	}
-	if err != nil {
+	table := shown{answer,
+		func(w io.Writer) error { return report.WriteWaterText(w, answer, units) },
+		func(w io.Writer) error { return report.WriteWaterCSV(w, answer, units) }}
+	if err := writeCSV(o.out, "water.csv", table); err != nil {
 		return err
 	}
-	_, err = io.Copy(s.out, &text)
-	return err
+	return s.show(o.format, table)
 }
 
 // mostStates bounds a table of states.

@@ -1,21 +1,12 @@
 package report
 
 import (
-	"encoding/json"
 	"fmt"
 	"io"
 	"strings"
 
 	"brinehead/cmd/brinehead/internal/study"
 )
-
-// WriteCatalogueJSON writes a list of the catalogue.
-func WriteCatalogueJSON(w io.Writer, c *study.Catalogue) error {
-	e := json.NewEncoder(w)
-	e.SetIndent("", "  ")
-	e.SetEscapeHTML(false)
-	return e.Encode(c)
-}
 
 // WriteCatalogueCSV writes it as a table, with the notes on its sources above.
 func WriteCatalogueCSV(w io.Writer, c *study.Catalogue) error {

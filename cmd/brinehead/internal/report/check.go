@@ -2,7 +2,6 @@ package report
 
 import (
 	"encoding/csv"
-	"encoding/json"
 	"fmt"
 	"io"
 	"slices"
@@ -14,14 +13,6 @@ import (
 
 // textWidth is the width of a terminal that text is made for.
 const textWidth = 80
-
-// WriteCheckJSON writes the answer with the keys of the contract.
-func WriteCheckJSON(w io.Writer, a *study.Check) error {
-	e := json.NewEncoder(w)
-	e.SetIndent("", "  ")
-	e.SetEscapeHTML(false)
-	return e.Encode(a)
-}
 
 // WriteCheckText writes the answer for reading: the verdict first, then what is not met and what could not be judged,
 // then every condition's operating points. Where the answer is of one condition its runs and points follow.

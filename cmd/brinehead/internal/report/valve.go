@@ -1,7 +1,6 @@
 package report
 
 import (
-	"encoding/json"
 	"fmt"
 	"io"
 	"math"
@@ -9,14 +8,6 @@ import (
 
 	"brinehead/cmd/brinehead/internal/study"
 )
-
-// WriteValveJSON writes a valve's stroke.
-func WriteValveJSON(w io.Writer, t *study.ValveTable) error {
-	e := json.NewEncoder(w)
-	e.SetIndent("", "  ")
-	e.SetEscapeHTML(false)
-	return e.Encode(t)
-}
 
 // WriteValveText writes a valve's stroke for reading.
 func WriteValveText(w io.Writer, t *study.ValveTable, u Units) error {

@@ -1,7 +1,6 @@
 package report
 
 import (
-	"encoding/json"
 	"fmt"
 	"io"
 	"strings"
@@ -23,13 +22,6 @@ var waterColumns = []struct {
 	{"vapour pressure", "kPa", 1e-3, 4, func(s study.WaterState) study.Figure { return s.VapourPressure }},
 	{"heat capacity", "kJ/(kg K)", 1e-3, 4, func(s study.WaterState) study.Figure { return s.HeatCapacity }},
 	{"thermal conductivity", "W/(m K)", 1, 4, func(s study.WaterState) study.Figure { return s.ThermalConductivity }},
-}
-
-// WriteWaterJSON writes the states in SI, the units in the keys.
-func WriteWaterJSON(w io.Writer, t *study.WaterTable) error {
-	e := json.NewEncoder(w)
-	e.SetIndent("", "  ")
-	return e.Encode(t)
 }
 
 // WriteWaterText writes one state as a list, several as a table, with where each figure comes from.

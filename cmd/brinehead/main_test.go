@@ -89,8 +89,8 @@ func TestPublishedExamples(t *testing.T) {
 			t.Errorf("%s, %s: %s %s %.6g, want %.6g within %g (%s)", job, condition, name, key, got, want, tolerance, source)
 		}
 	}
-	if len(rows) != 20 || len(books) != 6 {
-		t.Errorf("%d figures of %d examples, want 20 of 6", len(rows), len(books))
+	if len(rows) != 36 || len(books) != 11 {
+		t.Errorf("%d figures of %d examples, want 36 of 11", len(rows), len(books))
 	}
 }
 

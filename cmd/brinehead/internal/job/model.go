@@ -420,7 +420,7 @@ func (b *builder) bore(r RunRow) float64 {
 		b.unknownName(place, err, "brinehead catalogue sizes")
 		return math.NaN()
 	}
-	b.supply(r.Run.Value, "bore", fmt.Sprintf("%.1f mm", size.Bore()*1e3), fmt.Sprintf("%s %s, %g x %g mm; %s", size.Standard, size.Name(),
+	b.supply(r.Run.Value, "bore", fmt.Sprintf("%.1f mm", size.Bore()*1e3), fmt.Sprintf("%s %s, %.6g x %.6g mm; %s", size.Standard, size.Name(),
 		size.OutsideDiameter*1e3, size.Wall*1e3, size.Mark.Meaning()))
 	return size.Bore()
 }
@@ -456,7 +456,7 @@ func (b *builder) wall(r RunRow, pipe hydraulics.Pipe) float64 {
 			}
 			if figure, err := material.RoughnessIn(state); err == nil && !own.Given {
 				roughness = figure.Height
-				b.supply(r.Run.Value, "roughness", fmt.Sprintf("%g mm", figure.Height*1e3), fmt.Sprintf("%s, %s: %s; %s", material.Name, state, figure.Source, figure.Mark.Meaning()))
+				b.supply(r.Run.Value, "roughness", fmt.Sprintf("%.6g mm", figure.Height*1e3), fmt.Sprintf("%s, %s: %s; %s", material.Name, state, figure.Source, figure.Mark.Meaning()))
 			} else if err != nil && !own.Given {
 				b.unknownName(r.Material.Place, err, "brinehead catalogue materials")
 			}

@@ -145,7 +145,7 @@ func reason(f study.Finding, u Units) string {
 // conditionLines writes one condition.
 func conditionLines(c *study.Condition, u Units, withRuns bool) []string {
 	lines := wrap("", "  ", c.Condition+": "+waterText(c, u))
-	pumps := grid{left: 1, head: []string{"pump", "flow " + u.Unit("m3/h"), "head " + u.Unit("m"), "eff. %", "shaft " + u.Unit("kW"),
+	pumps := grid{left: 1, head: []string{"pump", u.Unit("m3/h"), "head " + u.Unit("m"), "eff. %", "shaft " + u.Unit("kW"),
 		"NPSHA", "NPSHR", "margin", "of best %"}}
 	for _, p := range c.Pumps {
 		row := []string{p.Pump, u.Text(p.Flow, "m3/h", 1), u.Text(p.Head, "m", 2), u.Text(100*p.Efficiency, "", 1), u.Text(p.ShaftPower, "kW", 1),
@@ -200,7 +200,7 @@ func waterText(c *study.Condition, u Units) string {
 }
 
 func runGrid(c *study.Condition, u Units) grid {
-	g := grid{left: 1, head: []string{"run", "flow " + u.Unit("m3/h"), u.Unit("m/s"), "Re", "f", "pipe loss " + u.Unit("m"), "fittings " + u.Unit("m")}}
+	g := grid{left: 1, head: []string{"run", u.Unit("m3/h"), u.Unit("m/s"), "Re", "f", "pipe " + u.Unit("m"), "fittings " + u.Unit("m")}}
 	for _, r := range c.Runs {
 		row := []string{r.Run, u.Text(r.Flow, "m3/h", 1), u.Text(r.Velocity, "m/s", 2), u.Text(r.Reynolds, "", 0), u.Text(r.FrictionFactor, "", 4),
 			u.Text(r.PipeLoss, "m", 3), u.Text(r.FittingLoss, "m", 3)}

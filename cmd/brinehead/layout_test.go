@@ -364,3 +364,41 @@ func TestWarnings(t *testing.T) {
 		t.Errorf("%s", got)
 	}
 }
+
+// Two fresh-water loops under one header tank, joined by a three-way mixing valve and a return: what the hot loop takes from
+// the cold one it gives back, the tank passes nothing, and every pressure at rest is that of the column under the tank.
+func TestLoopsJoinedByAMixingValve(t *testing.T) {
+	tables := map[string]string{
+		"points.csv": "point,kind,elevation [m],level [m]\nTANK,tank,14,14.5\nLT IN,junction,3,\nLT OUT,junction,3,\nLT P,junction,3,\nHT IN,junction,4,\nHT OUT,junction,4,\nMIX,junction,5,\nENGINE,junction,6,\n",
+		"runs.csv": "run,from,to,length [m],bore [mm],roughness [mm],temperature [degC]\nTANK LINE,TANK,LT IN,12,50,0.1,\nLT COOLER,LT P,LT OUT,10,150,0.1,\nLT BACK,LT OUT,LT IN,20,150,0.1,\n" +
+			"LT SUCTION,LT IN,LT OUT,30,80,0.1,\nHT ENGINE,HT OUT,ENGINE,10,125,0.1,80\nHT CIRCULATION,ENGINE,MIX,8,125,0.1,80\nLT TO HT,LT OUT,MIX,6,80,0.1,\nHT SUCTION,MIX,HT IN,3,125,0.1,75\nHT TO LT,ENGINE,LT IN,6,80,0.1,80\n",
+		"fittings.csv":    "run,fitting,tag,kv [m3/h],k,opening [%]\nHT CIRCULATION,three-way valve port A,V40,180,,70\nLT TO HT,three-way valve port B,V40,180,,\nLT COOLER,cooler,,,12,\nHT ENGINE,engine,,,15,\n",
+		"pumps.csv":       "pump,from,to,curve\nLT,LT IN,LT P,C\nHT,HT IN,HT OUT,C\n",
+		"pump_curves.csv": "curve,flow [m3/h],head [m],efficiency [%],npshr [m]\nC,0,28,0,2\nC,60,26,60,2\nC,120,20,75,2.5\nC,160,13,68,3.4\nC,190,6,50,4.5\n",
+		"conditions.csv":  "condition,water,temperature [degC],running\nrunning,fresh,40,\nat rest,fresh,40,none\n",
+	}
+	answer, _ := checkJSON(t, writeJob(t, tables))
+	c := answer.Conditions[0]
+	in, out := runNamed(t, c, "LT TO HT"), runNamed(t, c, "HT TO LT")
+	if !(in.Flow > 5) || !(math.Abs(float64(in.Flow-out.Flow)) < 1e-6) {
+		t.Errorf("to the hot loop %g m3/h, back %g", float64(in.Flow), float64(out.Flow))
+	}
+	if tank := runNamed(t, c, "TANK LINE"); !(math.Abs(float64(tank.Flow)) < 1e-9) {
+		t.Errorf("the tank passes %g m3/h", float64(tank.Flow))
+	}
+	if p := c.Pumps[1]; !(math.Abs(float64(p.Flow-runNamed(t, c, "HT CIRCULATION").Flow-out.Flow)) < 1e-6) || !(p.NPSHMargin > 5) {
+		t.Errorf("%+v", p)
+	}
+	// At rest, with the loops as cold as the rest: 14.5 m of water over each point.
+	for old, new := range map[string]string{",80\n": ",\n", ",75\n": ",\n"} {
+		tables["runs.csv"] = strings.ReplaceAll(tables["runs.csv"], old, new)
+	}
+	answer, _ = checkJSON(t, writeJob(t, tables))
+	rest := answer.Conditions[1]
+	for i, p := range rest.Points {
+		z := []float64{14, 3, 3, 3, 4, 4, 5, 6}[i]
+		if want := (14.5 - z) * float64(rest.Water.Density) * 9.80665 / 1e5; !(math.Abs(float64(p.GaugePressure)-want) < 1e-6) {
+			t.Errorf("%s at rest: %g bar, by hand %g", p.Point, float64(p.GaugePressure), want)
+		}
+	}
+}

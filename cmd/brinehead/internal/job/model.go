@@ -530,7 +530,11 @@ func (b *builder) fitting(r FittingRow, pipe hydraulics.Pipe) (f hydraulics.Fitt
 		return f, false
 	}
 	f.Coefficient = coefficient
-	b.supply(nameOf(r), "loss coefficient", fmt.Sprintf("k %.4g", coefficient.K), fmt.Sprintf("%s: %s; %s; mark %s; scatter %.0f %%", entry.Name, entry.Method, entry.Source, entry.Mark, entry.Scatter*100))
+	figure := fmt.Sprintf("k %.4g", coefficient.K)
+	if bore := coefficient.Bore; bore != 0 && math.Abs(bore-pipe.ClearBore()) > 1e-6*bore {
+		figure += fmt.Sprintf(" on a bore of %.1f mm", bore*1e3)
+	}
+	b.supply(nameOf(r), "loss coefficient", figure, fmt.Sprintf("%s: %s; %s; mark %s; scatter %.0f %%", entry.Name, entry.Method, entry.Source, entry.Mark, entry.Scatter*100))
 	return f, false
 }
 
@@ -558,6 +562,16 @@ func (b *builder) threeWayPort(r FittingRow, f hydraulics.Fitting, port string, 
 	if !r.Kv.Given || !r.Tag.Given() {
 		b.fault(r.Fitting.Place, quoted(r.Fitting.Value), "a tag, the same at both ports, and the kv [m3/h] of the port fully open", "")
 		return f, false
+	}
+	for _, other := range b.job.Tables.Fittings { // one opening sets both, whichever row has it
+		if fold(other.Tag.Value) != fold(r.Tag.Value) || !other.Opening.Given {
+			continue
+		}
+		if r.Opening.Given && other.Opening.Value != r.Opening.Value {
+			b.fault(r.Opening.Place, fmt.Sprintf("%g %%", r.Opening.Value*100), fmt.Sprintf("one opening for both ports of the valve, not %g %% at the other", other.Opening.Value*100), "")
+		} else if !opening.Given {
+			opening = other.Opening
+		}
 	}
 	share := opening.Or(1)
 	if port == "b" {

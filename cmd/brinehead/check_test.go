@@ -244,8 +244,8 @@ func TestOutFolder(t *testing.T) {
 		return files
 	}
 	first, second := read(), read()
-	if len(first) != 4+7*4 {
-		t.Errorf("%d files, want 4 tables and 4 plots of each of 7 conditions", len(first))
+	if len(first) != 4+7*6 {
+		t.Errorf("%d files, want 4 tables and 6 plots of each of 7 conditions", len(first))
 	}
 	for name, content := range first {
 		if content == "" || content != second[name] {
@@ -257,6 +257,7 @@ func TestOutFolder(t *testing.T) {
 		"losses.csv":                     "condition,run,tag,element,flow [m3/h],",
 		"findings.csv":                   "condition,limit,on,value,limit value,unit,verdict,reason,source",
 		"ballast-tropics-head.svg":       "<?xml",
+		"ballast-tropics-schematic.svg":  "<?xml",
 		"ballast-tropics-npsh.png":       "\x89PNG",
 		"river-port-high-chest-head.png": "\x89PNG",
 	} {

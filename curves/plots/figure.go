@@ -205,6 +205,13 @@ func (f *figure) write(w io.Writer, format Format, size Size) error {
 	if size.Width <= 0 || size.Height <= 0 {
 		size = Size{160, 110}
 	}
+	return writePage(w, format, size, func(page draw.Canvas) {
+		f.plot().Draw(draw.Crop(page, vg.Points(6), -vg.Points(10), vg.Points(6), -f.heading(page)))
+	})
+}
+
+// writePage makes a white page of a size, has it drawn on, and writes it in a format.
+func writePage(w io.Writer, format Format, size Size, drawn func(page draw.Canvas)) error {
 	width, height := vg.Length(size.Width)*vg.Millimeter, vg.Length(size.Height)*vg.Millimeter
 	var canvas vg.CanvasWriterTo
 	switch format {
@@ -220,7 +227,7 @@ func (f *figure) write(w io.Writer, format Format, size Size) error {
 	page := draw.New(canvas)
 	page.SetColor(color.White)
 	page.Fill(page.Rectangle.Path())
-	f.plot().Draw(draw.Crop(page, vg.Points(6), -vg.Points(10), vg.Points(6), -f.heading(page)))
+	drawn(page)
 	_, err := canvas.WriteTo(w)
 	return err
 }

@@ -10,11 +10,11 @@ import (
 	"brinehead/curves/plots"
 )
 
-// conditionPlots draws a condition's head and NPSH over flow. A condition without a solution or a running pump has
-// none to draw.
+// conditionPlots draws a condition's network, and head and NPSH over flow where a pump runs. A condition without a
+// solution has none to draw.
 func conditionPlots(a *study.Check, c *study.Condition, u Units, stem string) ([]File, error) {
-	pictures := c.Pictures()
-	if pictures == nil {
+	drawing := c.Drawing()
+	if drawing == nil {
 		return nil, nil
 	}
 	title := fmt.Sprintf("%s: %s", a.Job, c.Condition)
@@ -25,6 +25,20 @@ func conditionPlots(a *study.Check, c *study.Condition, u Units, stem string) ([
 	}
 	head := plots.HeadChart{Title: title, Subtitle: waterText(c, u), Units: units}
 	npsh := plots.NPSHChart{Title: title, Subtitle: waterText(c, u), Units: units}
+	schematic := plots.Schematic{Title: title, Subtitle: waterText(c, u), Units: units}
+	if u == US {
+		schematic.PressureName, schematic.PressureFactor = usCustomary["bar"].name, usCustomary["bar"].factor*1e-5
+	}
+	for _, p := range drawing.Points {
+		schematic.Points = append(schematic.Points, plots.SchematicPoint(p))
+	}
+	for _, r := range drawing.Runs {
+		schematic.Runs = append(schematic.Runs, plots.SchematicRun(r))
+	}
+	for _, p := range drawing.Pumps {
+		schematic.Pumps = append(schematic.Pumps, plots.SchematicPump(p))
+	}
+	pictures := c.Pictures()
 	for _, p := range pictures {
 		head.Pumps = append(head.Pumps, plots.PumpLine{Line: line(p.Name, p.Flow, p.Head), Digitised: line("", p.DigitisedFlow, p.DigitisedHead),
 			Beyond: []plots.Line{line("", p.BeyondFlow, p.BeyondHead)}})
@@ -48,13 +62,17 @@ func conditionPlots(a *study.Check, c *study.Condition, u Units, stem string) ([
 		}
 	}
 	var files []File
-	for _, d := range []struct {
+	type plot struct {
 		name  string
 		write func(*bytes.Buffer, plots.Format) error
-	}{
-		{"head", func(b *bytes.Buffer, f plots.Format) error { return head.Write(b, f, plots.Size{}) }},
-		{"npsh", func(b *bytes.Buffer, f plots.Format) error { return npsh.Write(b, f, plots.Size{}) }},
-	} {
+	}
+	all := []plot{{"schematic", func(b *bytes.Buffer, f plots.Format) error { return schematic.Write(b, f, plots.Size{}) }}}
+	if len(pictures) > 0 {
+		all = append(all,
+			plot{"head", func(b *bytes.Buffer, f plots.Format) error { return head.Write(b, f, plots.Size{}) }},
+			plot{"npsh", func(b *bytes.Buffer, f plots.Format) error { return npsh.Write(b, f, plots.Size{}) }})
+	}
+	for _, d := range all {
 		for _, format := range []plots.Format{plots.SVG, plots.PNG} {
 			var b bytes.Buffer
 			if err := d.write(&b, format); err != nil {

@@ -143,3 +143,86 @@ func (c *Condition) bounds(u curves.Pump) []Bound {
 	}
 	return list
 }
+
+// Drawing is what a schematic shows of a condition: the network with its flows and pressures, in SI, NaN where a figure is
+// not known.
+type Drawing struct {
+	Points []DrawnPoint
+	Runs   []DrawnRun
+	Pumps  []DrawnPump
+}
+
+// DrawnPoint is a point.
+type DrawnPoint struct {
+	Name, Kind          string
+	Elevation, Pressure float64
+}
+
+// DrawnRun is a run with the kinds of its fittings that have a symbol.
+type DrawnRun struct {
+	Name     string
+	From, To int
+	Flow     float64
+	Shut     bool
+	Symbols  []string
+}
+
+// DrawnPump is a pump.
+type DrawnPump struct {
+	Name     string
+	From, To int
+	Flow     float64
+	Running  bool
+}
+
+// Drawing returns the network of a condition, or nil where it has no solution.
+func (c *Condition) Drawing() *Drawing {
+	if c.solved == nil {
+		return nil
+	}
+	d := &Drawing{}
+	n := c.solved.Network
+	for i, p := range n.Points {
+		kind := "junction"
+		switch {
+		case c.built.SeaInlets[i]:
+			kind = "sea"
+		case c.built.Overboards[i]:
+			kind = "overboard"
+		case p.Fixed:
+			kind = "tank"
+		}
+		d.Points = append(d.Points, DrawnPoint{p.Name, kind, c.built.Elevations[i], float64(c.Points[i].GaugePressure) * 1e5})
+	}
+	for i, r := range n.Runs {
+		run := DrawnRun{r.Name, r.From, r.To, float64(c.Runs[i].Flow) / 3600, r.Shut, nil}
+		for _, f := range r.Fittings {
+			if s := symbolOf(f.Name, f.NonReturn); s != "" && len(run.Symbols) < 3 {
+				run.Symbols = append(run.Symbols, s)
+			}
+		}
+		d.Runs = append(d.Runs, run)
+	}
+	for i, u := range c.solved.Plant.Pumps {
+		d.Pumps = append(d.Pumps, DrawnPump{u.Name, u.From, u.To, float64(c.Pumps[i].Flow) / 3600, u.Running})
+	}
+	return d
+}
+
+// symbolOf returns the symbol of a fitting by the words of its name; none for what is part of the pipe.
+func symbolOf(name string, nonReturn bool) string {
+	name = strings.ToLower(name)
+	switch {
+	case nonReturn:
+		return "non-return"
+	case strings.Contains(name, "strainer"):
+		return "strainer"
+	case strings.Contains(name, "cooler") || strings.Contains(name, "exchanger"):
+		return "cooler"
+	case strings.Contains(name, "orifice") || strings.Contains(name, "disc"):
+		return "orifice"
+	case strings.Contains(name, "valve"):
+		return "valve"
+	}
+	return ""
+}

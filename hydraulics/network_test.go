@@ -225,7 +225,7 @@ func TestRandomNetworks(t *testing.T) {
 // An independent solution: Newton's method in the plain, on all flows and heads as one dense system with halved steps.
 // It knows no band, no content and no weights, and takes only the losses from the package.
 func TestAgainstDenseNewton(t *testing.T) {
-	const seed, count = 42, 300
+	const seed, count = 42, 1000
 	compared, tried := 0, 0
 	for ; compared < count; tried++ {
 		rng := rand.New(rand.NewPCG(seed, uint64(tried)))

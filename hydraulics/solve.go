@@ -309,8 +309,8 @@ func (s *Solver) settle(forced int) (rounds int, err error) {
 		s.shut[len(n.Runs)+i] = !p.Running && !p.leaks() || i == forced
 	}
 	for k := range s.links { // a flow of nothing has no slope to start from
-		if math.Abs(s.flow[k]) < 1e-3*s.links[k].start {
-			s.flow[k] = s.links[k].start
+		if math.Abs(s.flow[k]) < 1e-6*s.links[k].start {
+			s.flow[k] = 0.1 * s.links[k].start
 		}
 	}
 	for {

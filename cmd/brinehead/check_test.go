@@ -11,6 +11,7 @@ import (
 
 	"brinehead/cmd/brinehead/internal/job"
 	"brinehead/cmd/brinehead/internal/study"
+	"brinehead/curves"
 	"brinehead/hydraulics"
 )
 
@@ -358,16 +359,36 @@ func BenchmarkDemoCondition(b *testing.B) {
 			}
 		}
 	})
-	b.Run("solve", func(b *testing.B) {
-		p, err := j.Build(condition)
+	solve := func(p, near *job.Case) func(b *testing.B) {
+		return func(b *testing.B) {
+			var from *curves.Solved
+			if near != nil {
+				if from, err = near.Solve(); err != nil {
+					b.Fatal(err)
+				}
+			}
+			b.ReportAllocs()
+			for b.Loop() {
+				if _, err := p.SolveNear(from); err != nil {
+					b.Fatal(err)
+				}
+			}
+		}
+	}
+	built := func(name string) *job.Case {
+		p, err := j.Build(name)
 		if err != nil {
 			b.Fatal(err)
 		}
-		b.ReportAllocs()
-		for b.Loop() {
-			if _, err := p.Solve(); err != nil {
-				b.Fatal(err)
-			}
-		}
-	})
+		return p
+	}
+	b.Run("solve", solve(built(condition), nil))
+	b.Run("warm", solve(built(condition), built("ballast, tropics")))
+	plain := func(name string) *job.Case { // the same without its two tees
+		p := built(name)
+		p.Network.Tees = nil
+		return p
+	}
+	b.Run("solve without tees", solve(plain(condition), nil))
+	b.Run("warm without tees", solve(plain(condition), plain("ballast, tropics")))
 }

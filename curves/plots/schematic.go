@@ -261,7 +261,7 @@ func route(a, b vg.Point, c draw.Canvas, e edge, lanes int) []vg.Point {
 		return []vg.Point{a, {X: x, Y: a.Y}, {X: x, Y: b.Y}, b}
 	}
 	out, in := a.X+vg.Points(16+8*float64(e.lane%4)), b.X-vg.Points(16+8*float64(e.lane%4))
-	over := c.Max.Y - vg.Points(24) - vg.Length(e.lane%6)*backLane
+	over := c.Max.Y - vg.Points(34) - vg.Length(e.lane%6)*backLane
 	return []vg.Point{a, {X: out, Y: a.Y}, {X: out, Y: over}, {X: in, Y: over}, {X: in, Y: b.Y}, b}
 }
 

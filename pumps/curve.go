@@ -26,6 +26,8 @@ type Curve struct {
 	Points   []SheetPoint
 
 	head, efficiency, power, npshRequired *Fit // nil where fewer than two points give it, but for head
+
+	droops bool // the head rises before it falls
 }
 
 // NewCurve fits the points of one sheet. It is an error where fewer than three points give a head, where two have
@@ -69,6 +71,9 @@ func NewCurve(impeller, speed float64, points []SheetPoint) (*Curve, error) {
 	if last, _ := c.head.At(high); !(last < first) {
 		return nil, fmt.Errorf("the head does not fall: %.4g m at %.4g m3/s, %.4g m at %.4g m3/s", first, low, last, high)
 	}
+	_, most, _ := c.head.Greatest()
+	last, _ := c.head.At(high)
+	c.droops = most > first+1e-3*(first-last) // a rise of a thousandth of the fall is within the reading
 	return c, nil
 }
 

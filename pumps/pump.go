@@ -55,13 +55,7 @@ func (p Pump) Head(flow float64) (head, slope float64) {
 }
 
 // Droops says whether the digitised head rises from its first point before it falls: such a curve may meet a system twice.
-func (p Pump) Droops() bool {
-	low, high := p.Curve.head.Range()
-	first, _ := p.Curve.head.At(low)
-	_, most, _ := p.Curve.head.Greatest()
-	last, _ := p.Curve.head.At(high)
-	return most > first+1e-3*(first-last) // a rise of a thousandth of the fall is within the reading
-}
+func (p Pump) Droops() bool { return p.Curve.droops }
 
 // Range returns the least and the greatest flow (m3/s) of the digitised heads at the pump's speed.
 func (p Pump) Range() (low, high float64) {

@@ -11,7 +11,6 @@ import (
 
 	"brinehead/cmd/brinehead/internal/job"
 	"brinehead/cmd/brinehead/internal/study"
-	"brinehead/curves"
 	"brinehead/hydraulics"
 )
 
@@ -359,17 +358,34 @@ func BenchmarkDemoCondition(b *testing.B) {
 			}
 		}
 	})
-	solve := func(p, near *job.Case) func(b *testing.B) {
+	cold := func(p *job.Case) func(b *testing.B) { // the solver made anew each time
 		return func(b *testing.B) {
-			var from *curves.Solved
-			if near != nil {
-				if from, err = near.Solve(); err != nil {
+			b.ReportAllocs()
+			for b.Loop() {
+				if _, err := p.Solve(); err != nil {
 					b.Fatal(err)
 				}
 			}
+		}
+	}
+	warm := func(p, near *job.Case) func(b *testing.B) { // a solver at hand, started from a neighbouring condition
+		return func(b *testing.B) {
+			from, err := near.Solve()
+			if err != nil {
+				b.Fatal(err)
+			}
+			if _, err := p.Solve(); err != nil {
+				b.Fatal(err)
+			}
+			solver, err := hydraulics.NewSolver(&p.Network)
+			if err != nil {
+				b.Fatal(err)
+			}
+			var out hydraulics.Solution
 			b.ReportAllocs()
 			for b.Loop() {
-				if _, err := p.SolveNear(from); err != nil {
+				solver.StartFrom(&from.Solution)
+				if err := solver.Solve(&out); err != nil {
 					b.Fatal(err)
 				}
 			}
@@ -382,13 +398,13 @@ func BenchmarkDemoCondition(b *testing.B) {
 		}
 		return p
 	}
-	b.Run("solve", solve(built(condition), nil))
-	b.Run("warm", solve(built(condition), built("ballast, tropics")))
+	b.Run("solve", cold(built(condition)))
+	b.Run("warm", warm(built(condition), built("ballast, tropics")))
 	plain := func(name string) *job.Case { // the same without its two tees
 		p := built(name)
 		p.Network.Tees = nil
 		return p
 	}
-	b.Run("solve without tees", solve(plain(condition), nil))
-	b.Run("warm without tees", solve(plain(condition), plain("ballast, tropics")))
+	b.Run("solve without tees", cold(plain(condition)))
+	b.Run("warm without tees", warm(plain(condition), plain("ballast, tropics")))
 }

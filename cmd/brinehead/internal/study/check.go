@@ -234,7 +234,7 @@ func (c *Condition) report(j *job.Job) {
 			c.Notes = append(c.Notes, beyondCurve(s, i))
 		}
 		if p.HeldShut {
-			c.Notes = append(c.Notes, u.Name+" runs against its shut non-return valve and delivers nothing: it heats up")
+			c.remarks = append(c.remarks, u.Name+" runs against its shut non-return valve and delivers nothing: it heats up")
 		}
 		if !d.Running && d.Flow < 0 {
 			c.remarks = append(c.remarks, fmt.Sprintf("%s stands idle, and %s m3/h run back through its leaking non-return valve", u.Name, short(-d.Flow*3600, 3)))
@@ -334,7 +334,7 @@ func (c *Condition) crossings(pump int) (list []Crossing) {
 func (c *Condition) withhold() {
 	for i, p := range c.Pumps {
 		if p.Running {
-			c.Pumps[i] = Pump{Pump: p.Pump, Running: true, Extrapolated: p.Extrapolated, HeldShut: p.HeldShut, Flow: unknown, Head: unknown, Efficiency: unknown,
+			c.Pumps[i] = Pump{Pump: p.Pump, Running: true, Extrapolated: p.Extrapolated, Flow: unknown, Head: unknown, Efficiency: unknown,
 				ShaftPower: unknown, NPSHAvailable: unknown, NPSHRequired: unknown, NPSHMargin: unknown, BestShare: unknown}
 		}
 	}

@@ -402,3 +402,22 @@ func TestLoopsJoinedByAMixingValve(t *testing.T) {
 		}
 	}
 }
+
+// A limit on flow asks how much runs, not which way the run is written.
+func TestFlowLimitWhicheverWay(t *testing.T) {
+	tables := lift("", "")
+	tables["runs.csv"] = strings.ReplaceAll(tables["runs.csv"], "SUCTION,SEA,S,", "SUCTION,S,SEA,")
+	tables["limits.csv"] += "minimum flow,STR1,100,m3/h\nminimum flow,SUCTION,100,m3/h\n"
+	judged := 0
+	for _, f := range only(t, writeJob(t, tables)).Findings {
+		if f.Limit == "minimum flow" {
+			judged++
+			if f.Verdict != study.Met || !(f.Value > 100) {
+				t.Errorf("%+v", f)
+			}
+		}
+	}
+	if judged != 2 {
+		t.Errorf("%d limits judged", judged)
+	}
+}

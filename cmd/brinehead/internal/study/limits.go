@@ -86,18 +86,19 @@ var limitKinds = []limitKind{
 	}},
 }
 
+// flowOf returns a pump's flow, or how much runs through a run or through that of a fitting, whichever way.
 func flowOf(c *Condition, kind string, i int) (Figure, string) {
 	switch kind {
 	case "pumps":
 		return c.Pumps[i].Flow, ""
 	case "tags":
-		for _, r := range c.Runs {
+		for k, r := range c.Runs {
 			if r.Run == c.Fittings[i].Run {
-				return r.Flow, ""
+				return flowOf(c, "runs", k)
 			}
 		}
 	}
-	return c.Runs[i].Flow, ""
+	return Figure(math.Abs(float64(c.Runs[i].Flow))), ""
 }
 
 func velocityOf(c *Condition, _ string, i int) (Figure, string) {

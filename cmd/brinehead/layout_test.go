@@ -421,3 +421,15 @@ func TestFlowLimitWhicheverWay(t *testing.T) {
 		t.Errorf("%d limits judged", judged)
 	}
 }
+
+// A high sea chest above the waterline harms nothing while its run is shut.
+func TestDryInletBehindAShutRun(t *testing.T) {
+	folder := copyJob(t, seawater, [3]string{"conditions.csv", `"ballast, tropics",sea,32,35.165,4.8`, `"ballast, tropics",sea,32,35.165,3.0`})
+	if code, _, stderr := brinehead("check", folder, "--condition", "ballast, tropics"); code > exitNotMet || stderr != "" {
+		t.Errorf("exit code %d, %s", code, stderr)
+	}
+	folder = copyJob(t, folder, [3]string{"conditions.csv", `35.165,3.0,P1 P2,shut,open`, `35.165,3.0,P1 P2,open,shut`})
+	if code, _, stderr := brinehead("check", folder); code != exitInput || !strings.Contains(stderr, "a draught that covers the sea inlet HIGH CHEST at 3.1 m: it draws air") {
+		t.Errorf("exit code %d, %s", code, stderr)
+	}
+}

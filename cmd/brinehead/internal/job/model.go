@@ -193,6 +193,7 @@ func (j *Job) Build(name string, set ...Override) (*Case, error) {
 	b.water()
 	b.points()
 	b.runs()
+	b.dryInlets()
 	b.siphons()
 	b.tees()
 	b.pumps()
@@ -284,10 +285,6 @@ func (b *builder) points() {
 		switch fold(r.Kind.Value) {
 		case "sea":
 			p.Fixed, p.Head = true, draught.Value
-			if draught.Given && elevation > draught.Value {
-				b.fault(b.condition.Draught.Place, fmt.Sprintf("%g m", draught.Value),
-					fmt.Sprintf("a draught that covers the sea inlet %s at %g m: it draws air", r.Point.Value, elevation), "")
-			}
 		case "overboard":
 			p.Fixed, p.Head = true, math.Max(draught.Value, elevation)
 		case "tank":
@@ -333,6 +330,20 @@ func (b *builder) runs() {
 		b.highPoints = append(b.highPoints, r.HighPoint.Or(math.NaN()))
 		if from, to := b.plant.Elevations[run.From], b.plant.Elevations[run.To]; r.HighPoint.Given && r.HighPoint.Value < math.Max(from, to) {
 			b.fault(r.HighPoint.Place, fmt.Sprintf("%g m", r.HighPoint.Value), fmt.Sprintf("at least the elevations of the run's ends, %g and %g m", from, to), "")
+		}
+	}
+}
+
+// dryInlets faults a sea inlet above the draught whose run is open: it draws air. Behind a shut run it harms nothing.
+func (b *builder) dryInlets() {
+	draught := b.condition.Draught
+	for i, r := range b.job.Tables.Points {
+		if !b.plant.SeaInlets[i] || !draught.Given || r.Elevation.Value <= draught.Value {
+			continue
+		}
+		if slices.ContainsFunc(b.plant.Network.Runs, func(run hydraulics.Run) bool { return (run.From == i || run.To == i) && !run.Shut }) {
+			b.fault(draught.Place, fmt.Sprintf("%g m", draught.Value),
+				fmt.Sprintf("a draught that covers the sea inlet %s at %g m: it draws air", r.Point.Value, r.Elevation.Value), "or shut its run in this condition")
 		}
 	}
 }

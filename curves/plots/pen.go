@@ -16,8 +16,37 @@ type pen struct {
 	canvas draw.Canvas
 	x, y   func(float64) vg.Length
 
-	ink   []vg.Point     // points along what is drawn, close together
-	boxes []vg.Rectangle // labels and marks
+	boxes []vg.Rectangle          // labels and marks
+	ink   map[cell][]vg.Point     // points along what is drawn, close together, by where they lie
+	taken map[cell][]vg.Rectangle // the boxes, in every cell that they touch
+}
+
+// cell is a square of the paper, so that a label asks only what lies near it.
+type cell struct{ x, y int }
+
+const cellSide = 24 // points
+
+func cellOf(at vg.Point) cell {
+	return cell{int(math.Floor(float64(at.X) / cellSide)), int(math.Floor(float64(at.Y) / cellSide))}
+}
+
+// cells calls a function for every cell that a box touches.
+func cells(box vg.Rectangle, f func(c cell)) {
+	low, high := cellOf(box.Min), cellOf(box.Max)
+	for x := low.x; x <= high.x; x++ {
+		for y := low.y; y <= high.y; y++ {
+			f(cell{x, y})
+		}
+	}
+}
+
+// keep notes a box that labels must keep clear of.
+func (p *pen) keep(box vg.Rectangle) {
+	if p.taken == nil {
+		p.taken = map[cell][]vg.Rectangle{}
+	}
+	p.boxes = append(p.boxes, box)
+	cells(box, func(c cell) { p.taken[c] = append(p.taken[c], box) })
 }
 
 // stroke draws a line where it lies within the frame, or rings at its points.
@@ -53,12 +82,16 @@ func (p *pen) stroke(s stroke) {
 
 // remember notes points two points (of the printer) apart along a drawn line.
 func (p *pen) remember(line []vg.Point) {
+	if p.ink == nil {
+		p.ink = map[cell][]vg.Point{}
+	}
 	for i := 1; i < len(line); i++ {
 		a, b := line[i-1], line[i]
 		steps := max(1, int(math.Hypot(float64(b.X-a.X), float64(b.Y-a.Y))/2))
 		for k := range steps + 1 {
 			t := vg.Length(k) / vg.Length(steps)
-			p.ink = append(p.ink, vg.Point{X: a.X + t*(b.X-a.X), Y: a.Y + t*(b.Y-a.Y)})
+			at := vg.Point{X: a.X + t*(b.X-a.X), Y: a.Y + t*(b.Y-a.Y)}
+			p.ink[cellOf(at)] = append(p.ink[cellOf(at)], at)
 		}
 	}
 }
@@ -108,7 +141,7 @@ func (p *pen) boundName(b Bound) {
 		return // a name longer than the frame is high
 	}
 	p.canvas.FillText(name, best.Min, b.Name)
-	p.boxes = append(p.boxes, best)
+	p.keep(best)
 }
 
 // bracket draws a difference: a line between two short bars.
@@ -127,7 +160,7 @@ func (p *pen) mark(m Mark) {
 	at := vg.Point{X: p.x(m.Flow), Y: p.y(m.Value)}
 	p.canvas.DrawGlyph(draw.GlyphStyle{Color: inkColour, Radius: vg.Points(3.4), Shape: draw.CircleGlyph{}}, at)
 	r := vg.Points(5)
-	p.boxes = append(p.boxes, vg.Rectangle{Min: vg.Point{X: at.X - r, Y: at.Y - r}, Max: vg.Point{X: at.X + r, Y: at.Y + r}})
+	p.keep(vg.Rectangle{Min: vg.Point{X: at.X - r, Y: at.Y - r}, Max: vg.Point{X: at.X + r, Y: at.Y + r}})
 }
 
 // labelAt writes a label near a point: of the places round it the one that is clearest, the nearer of equals.
@@ -179,7 +212,7 @@ func (p *pen) write(label string, style text.Style, places []vg.Point, c color.C
 	}
 	style.Color, style.XAlign, style.YAlign = c, text.XLeft, text.YBottom
 	p.canvas.FillText(style, best.Min, label)
-	p.boxes = append(p.boxes, best)
+	p.keep(best)
 }
 
 // cost says how much a label in a box would hide, or how far it would leave the frame.
@@ -189,15 +222,24 @@ func (p *pen) cost(box vg.Rectangle) float64 {
 	if box.Min.X < frame.Min.X+2 || box.Max.X > frame.Max.X-2 || box.Min.Y < frame.Min.Y+2 || box.Max.Y > frame.Max.Y-2 {
 		cost += 1000
 	}
-	for _, other := range p.boxes {
-		if box.Min.X < other.Max.X+2 && other.Min.X < box.Max.X+2 && box.Min.Y < other.Max.Y+1 && other.Min.Y < box.Max.Y+1 {
-			cost += 200
+	// Grown by the room that is wanted round a label.
+	wide := vg.Rectangle{Min: vg.Point{X: box.Min.X - 2, Y: box.Min.Y - 1}, Max: vg.Point{X: box.Max.X + 2, Y: box.Max.Y + 1}}
+	first := cellOf(wide.Min)
+	cells(wide, func(c cell) {
+		for _, other := range p.taken[c] {
+			// A box in several cells counts in the first of those that are looked at.
+			if o := cellOf(other.Min); c.x != max(o.x, first.x) || c.y != max(o.y, first.y) {
+				continue
+			}
+			if wide.Min.X < other.Max.X && other.Min.X < wide.Max.X && wide.Min.Y < other.Max.Y && other.Min.Y < wide.Max.Y {
+				cost += 200
+			}
 		}
-	}
-	for _, at := range p.ink {
-		if box.Min.X-1 < at.X && at.X < box.Max.X+1 && box.Min.Y-1 < at.Y && at.Y < box.Max.Y+1 {
-			cost++
+		for _, at := range p.ink[c] {
+			if box.Min.X-1 < at.X && at.X < box.Max.X+1 && box.Min.Y-1 < at.Y && at.Y < box.Max.Y+1 {
+				cost++
+			}
 		}
-	}
+	})
 	return cost
 }

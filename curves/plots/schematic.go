@@ -367,7 +367,7 @@ func (s Schematic) drawPoint(p *pen, point SchematicPoint, at vg.Point) {
 	default:
 		p.canvas.DrawGlyph(draw.GlyphStyle{Color: inkColour, Radius: vg.Points(2.2), Shape: draw.CircleGlyph{}}, at)
 	}
-	p.boxes = append(p.boxes, vg.Rectangle{Min: vg.Point{X: at.X - r, Y: at.Y - r}, Max: vg.Point{X: at.X + r, Y: at.Y + r}})
+	p.keep(vg.Rectangle{Min: vg.Point{X: at.X - r, Y: at.Y - r}, Max: vg.Point{X: at.X + r, Y: at.Y + r}})
 }
 
 // symbol draws the symbol of an element at a place on a line that runs in a direction.
@@ -415,7 +415,7 @@ func (p *pen) symbol(name string, at, direction vg.Point, filled bool) {
 		p.canvas.StrokeLines(style, []vg.Point{spot(0, 1), spot(0, 0.3)})
 		p.canvas.StrokeLines(style, []vg.Point{spot(0, -1), spot(0, -0.3)})
 	}
-	p.boxes = append(p.boxes, vg.Rectangle{Min: vg.Point{X: at.X - 1.5*r, Y: at.Y - 1.5*r}, Max: vg.Point{X: at.X + 1.5*r, Y: at.Y + 1.5*r}})
+	p.keep(vg.Rectangle{Min: vg.Point{X: at.X - 1.5*r, Y: at.Y - 1.5*r}, Max: vg.Point{X: at.X + 1.5*r, Y: at.Y + 1.5*r}})
 }
 
 // arrow draws a filled arrow head.
@@ -451,5 +451,5 @@ func (p *pen) twoLines(name, figure string, at vg.Point, c color.Color) {
 	}
 	p.canvas.FillText(style, vg.Point{X: best.Min.X, Y: best.Min.Y + line}, name)
 	p.canvas.FillText(style, best.Min, figure)
-	p.boxes = append(p.boxes, best)
+	p.keep(best)
 }

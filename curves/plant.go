@@ -24,9 +24,9 @@ type Plant struct {
 // Pump is a pump in its place.
 type Pump struct {
 	Name     string
-	From, To int     // points of the network
-	Datum    float64 // m above the keel, of the impeller eye
-	Motor    float64 // W, rating of its motor; NaN where not known
+	From, To int         // points of the network
+	Datum    float64     // m above the keel, of the impeller eye
+	Motor    pumps.Motor // its figures NaN where not known
 	Running  bool
 	LeakKv   float64 // of its non-return valve when it stands idle, m3/h at 1 bar; 0 for none
 	pumps.Pump

@@ -1,27 +1,17 @@
 package hydraulics
 
-// Mark says how well a figure of the catalogues is known.
-type Mark string
+import "brinehead/sources"
 
-// The marks of the catalogues of sizes, materials and velocities.
+// Mark says how well a figure of the catalogues is known.
+type Mark = sources.Mark
+
+// The marks of the catalogues of sizes, materials, velocities and fittings.
 const (
-	MarkRead       Mark = "R"  // read in the source named
-	MarkReadTwice  Mark = "2R" // read in two sources that agree
-	MarkFromMemory Mark = "M"  // from memory: the source is still to be opened
-	MarkComputed   Mark = "C"  // computed here from published laws
+	MarkRead       = sources.MarkRead
+	MarkReadTwice  = sources.MarkReadTwice
+	MarkFromMemory = sources.MarkFromMemory
+	MarkComputed   = sources.MarkComputed
 )
 
-// Meaning returns the mark in words; a mark that is none of the catalogues' is "unknown mark".
-func (m Mark) Meaning() string {
-	switch m {
-	case MarkRead:
-		return "read in the source named"
-	case MarkReadTwice:
-		return "read in two sources that agree"
-	case MarkFromMemory:
-		return "from memory, source still to be opened"
-	case MarkComputed:
-		return "computed here from published laws"
-	}
-	return "unknown mark"
-}
+// millimetre in metres: the catalogues' unit of length.
+const millimetre = 1e-3

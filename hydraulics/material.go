@@ -1,6 +1,7 @@
 package hydraulics
 
 import (
+	"brinehead/sources"
 	_ "embed" // for the tables of names and roughness
 	"fmt"
 	"slices"
@@ -159,27 +160,27 @@ var materialCatalogue = sync.OnceValue(func() materialTables {
 
 func parseMaterials(names, roughness string) (materialTables, error) {
 	var tables materialTables
-	named, err := parseCatalogueTable(names, "material", "aliases")
+	named, err := sources.Parse(names, "material", "aliases")
 	if err != nil {
 		return materialTables{}, err
 	}
-	for _, row := range named.rows {
-		tables.materials = append(tables.materials, Material{Name: row["material"], Aliases: row.list("aliases")})
+	for _, row := range named.Rows {
+		tables.materials = append(tables.materials, Material{Name: row["material"], Aliases: row.List("aliases")})
 	}
-	table, err := parseMarkedTable(roughness, "materials", "state", "roughness_mm")
+	table, err := sources.ParseMarked(roughness, "materials", "state", "roughness_mm")
 	if err != nil {
 		return materialTables{}, err
 	}
-	tables.notes = table.notes
-	for _, row := range table.rows {
-		r := Roughness{State: MaterialState(row["state"]), Source: row["source"], Mark: row.mark()}
-		if r.Height, err = row.number("roughness_mm", millimetre); err != nil {
+	tables.notes = table.Notes
+	for _, row := range table.Rows {
+		r := Roughness{State: MaterialState(row["state"]), Source: row["source"], Mark: row.Mark()}
+		if r.Height, err = row.Number("roughness_mm", millimetre); err != nil {
 			return materialTables{}, err
 		}
 		if !(r.Height > 0) {
 			return materialTables{}, fmt.Errorf("roughness of %s, %s: want a figure of more than 0", row["materials"], r.State)
 		}
-		for _, name := range row.list("materials") {
+		for _, name := range row.List("materials") {
 			i := slices.IndexFunc(tables.materials, func(m Material) bool { return m.Name == name })
 			if i < 0 {
 				return materialTables{}, fmt.Errorf("roughness of %q, which is no material", name)

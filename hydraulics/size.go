@@ -1,6 +1,7 @@
 package hydraulics
 
 import (
+	"brinehead/sources"
 	"cmp"
 	"embed"
 	"fmt"
@@ -131,18 +132,18 @@ func (c *sizeCatalogue) read() error {
 }
 
 func (c *sizeCatalogue) parse(text string) error {
-	table, err := parseMarkedTable(text, "nominal", "outside_diameter_mm", "wall_mm", "series")
+	table, err := sources.ParseMarked(text, "nominal", "outside_diameter_mm", "wall_mm", "series")
 	if err != nil {
 		return err
 	}
-	c.Notes = table.notes
-	for _, row := range table.rows {
+	c.Notes = table.Notes
+	for _, row := range table.Rows {
 		s := Size{Standard: c.Name, Nominal: row["nominal"], Series: row["series"], Source: row["source"],
-			Mark: row.mark()}
-		if s.OutsideDiameter, err = row.number("outside_diameter_mm", millimetre); err != nil {
+			Mark: row.Mark()}
+		if s.OutsideDiameter, err = row.Number("outside_diameter_mm", millimetre); err != nil {
 			return err
 		}
-		if s.Wall, err = row.number("wall_mm", millimetre); err != nil {
+		if s.Wall, err = row.Number("wall_mm", millimetre); err != nil {
 			return err
 		}
 		if !(s.Wall > 0 && s.Bore() > 0) {

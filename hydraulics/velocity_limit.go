@@ -1,6 +1,7 @@
 package hydraulics
 
 import (
+	"brinehead/sources"
 	_ "embed" // for the table of velocities
 	"fmt"
 	"math"
@@ -113,15 +114,15 @@ var velocityCatalogue = sync.OnceValue(func() velocityTable {
 })
 
 func parseVelocityLimits(text string) (velocityTable, error) {
-	table, err := parseMarkedTable(text, "materials", "service", "bore_from_mm", "bore_to_mm", "least_m_s",
+	table, err := sources.ParseMarked(text, "materials", "service", "bore_from_mm", "bore_to_mm", "least_m_s",
 		"greatest_m_s")
 	if err != nil {
 		return velocityTable{}, err
 	}
-	parsed := velocityTable{notes: table.notes}
-	for _, row := range table.rows {
-		l := VelocityLimit{Materials: row.list("materials"), Service: row["service"], Source: row["source"],
-			Mark: row.mark()}
+	parsed := velocityTable{notes: table.Notes}
+	for _, row := range table.Rows {
+		l := VelocityLimit{Materials: row.List("materials"), Service: row["service"], Source: row["source"],
+			Mark: row.Mark()}
 		for _, cell := range []struct {
 			column string
 			unit   float64
@@ -132,7 +133,7 @@ func parseVelocityLimits(text string) (velocityTable, error) {
 			{"least_m_s", 1, &l.Least},
 			{"greatest_m_s", 1, &l.Greatest},
 		} {
-			if *cell.figure, err = row.number(cell.column, cell.unit); err != nil {
+			if *cell.figure, err = row.Number(cell.column, cell.unit); err != nil {
 				return velocityTable{}, err
 			}
 		}

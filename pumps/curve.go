@@ -18,63 +18,88 @@ type SheetPoint struct {
 	NPSHRequired float64 // m
 }
 
-// Curve is one impeller at one speed, as digitised. Head, efficiency, power and NPSH required are fitted apart, each
-// over the flows of its own points.
+// Curve is one impeller at one speed: as digitised, between two digitised ones, or trimmed from one. Head, efficiency,
+// power and NPSH required are fitted apart, each over the flows of its own points.
 type Curve struct {
 	Impeller float64 // m; 0 where the sheet does not say
 	Speed    float64 // rpm; 0 where the sheet does not say
 	Points   []SheetPoint
+	Origin   string // how it was made, where it is not digitised itself; empty where it is
 
 	head, efficiency, power, npshRequired *Fit // nil where fewer than two points give it, but for head
 
 	droops bool // the head rises before it falls
+
+	bestFlow, bestEfficiency float64 // NaN where not known
+}
+
+// quantity is what a sheet gives over flow.
+type quantity struct {
+	name  string
+	shape Shape // that physics demands of it
+	need  int   // how many points must give it
+	of    func(SheetPoint) float64
+	fit   func(*Curve) **Fit
+}
+
+// sheetQuantities are those that are fitted.
+var sheetQuantities = []quantity{
+	{"head", Hump, 3, func(p SheetPoint) float64 { return p.Head }, func(c *Curve) **Fit { return &c.head }},
+	{"efficiency", Hump, 0, func(p SheetPoint) float64 { return p.Efficiency }, func(c *Curve) **Fit { return &c.efficiency }},
+	{"power", AnyShape, 0, func(p SheetPoint) float64 { return p.Power }, func(c *Curve) **Fit { return &c.power }},
+	{"NPSH required", Valley, 0, func(p SheetPoint) float64 { return p.NPSHRequired }, func(c *Curve) **Fit { return &c.npshRequired }},
+}
+
+// points returns flow and value of the points that give the quantity, and which they are.
+func (q quantity) points(points []SheetPoint) (x, y []float64, which []int) {
+	for i, p := range points {
+		if v := q.of(p); !math.IsNaN(v) {
+			x, y, which = append(x, p.Flow), append(y, v), append(which, i)
+		}
+	}
+	return x, y, which
 }
 
 // NewCurve fits the points of one sheet. It is an error where fewer than three points give a head, where two have
 // one flow, where the head does not fall over the sheet, or where a figure is negative.
 func NewCurve(impeller, speed float64, points []SheetPoint) (*Curve, error) {
 	c := &Curve{Impeller: impeller, Speed: speed, Points: points}
-	for _, q := range []struct {
-		name string
-		fit  **Fit
-		of   func(SheetPoint) float64
-		need int
-	}{
-		{"head", &c.head, func(p SheetPoint) float64 { return p.Head }, 3},
-		{"efficiency", &c.efficiency, func(p SheetPoint) float64 { return p.Efficiency }, 0},
-		{"power", &c.power, func(p SheetPoint) float64 { return p.Power }, 0},
-		{"NPSH required", &c.npshRequired, func(p SheetPoint) float64 { return p.NPSHRequired }, 0},
-	} {
-		var x, y []float64
-		for _, p := range points {
-			if v := q.of(p); !math.IsNaN(v) {
-				if !(p.Flow >= 0) || v < 0 {
-					return nil, fmt.Errorf("flow %g m3/s with %s %g: neither may be negative", p.Flow, q.name, v)
-				}
-				x, y = append(x, p.Flow), append(y, v)
+	for _, q := range sheetQuantities {
+		x, y, _ := q.points(points)
+		for i := range x {
+			if !(x[i] >= 0) || y[i] < 0 {
+				return nil, fmt.Errorf("flow %g m3/s with %s %g: neither may be negative", x[i], q.name, y[i])
 			}
 		}
-		if len(x) < max(q.need, 2) {
-			if len(x) < q.need {
-				return nil, fmt.Errorf("%d points give a %s, want at least %d", len(x), q.name, q.need)
-			}
+		if len(x) < q.need {
+			return nil, fmt.Errorf("%d points give a %s, want at least %d", len(x), q.name, q.need)
+		}
+		if len(x) < 2 {
 			continue // one point is no curve
 		}
-		fit, err := NewFit(x, y)
+		fit, err := NewFit(x, y, q.shape)
 		if err != nil {
 			return nil, fmt.Errorf("%s: %w", q.name, err)
 		}
-		*q.fit = fit
+		*q.fit(c) = fit
 	}
 	low, high := c.head.Range()
 	first, _ := c.head.At(low)
 	if last, _ := c.head.At(high); !(last < first) {
 		return nil, fmt.Errorf("the head does not fall: %.4g m at %.4g m3/s, %.4g m at %.4g m3/s", first, low, last, high)
 	}
-	_, most, _ := c.head.Greatest()
-	last, _ := c.head.At(high)
-	c.droops = most > first+1e-3*(first-last) // a rise of a thousandth of the fall is within the reading
+	c.settle()
 	return c, nil
+}
+
+// settle notes what the fits say once for all: whether the head rises before it falls, and where the efficiency is best.
+func (c *Curve) settle() {
+	c.bestFlow, c.bestEfficiency = c.findBest()
+	low, high := c.head.Range()
+	first, _ := c.head.At(low)
+	last, _ := c.head.At(high)
+	_, most, _ := c.head.Greatest()
+	c.droops = most > first+1e-3*(first-last) // a rise of a thousandth of the fall is within the reading
 }
 
 // HeadFit returns the fitted head, m over m3/s.
@@ -107,24 +132,29 @@ func (c *Curve) efficiencyAt(flow float64) (efficiency, slope float64, known boo
 // BestEfficiency returns the flow of the best efficiency and that efficiency. It is not known where the sheet gives
 // no efficiency, or where the greatest lies at an end of the digitised range: the best point may be beyond.
 func (c *Curve) BestEfficiency() (flow, efficiency float64, known bool) {
+	return c.bestFlow, c.bestEfficiency, !math.IsNaN(c.bestFlow)
+}
+
+// findBest searches the best efficiency; NaN where it is not known.
+func (c *Curve) findBest() (flow, efficiency float64) {
 	fit := c.efficiency
 	if fit == nil {
 		fit = c.power
 	}
 	if fit == nil {
-		return math.NaN(), math.NaN(), false
+		return math.NaN(), math.NaN()
 	}
 	low, high := fit.Range()
 	if c.efficiency == nil {
 		headLow, headHigh := c.head.Range()
 		low, high = math.Max(low, headLow), math.Min(high, headHigh)
 	}
-	flow, efficiency, known = greatest(low, high, func(x float64) (float64, float64) {
+	flow, efficiency, inner := greatest(low, high, func(x float64) (float64, float64) {
 		y, slope, _ := c.efficiencyAt(x)
 		return y, slope
 	})
-	if !known {
-		return math.NaN(), math.NaN(), false
+	if !inner {
+		return math.NaN(), math.NaN()
 	}
-	return flow, efficiency, true
+	return flow, efficiency
 }

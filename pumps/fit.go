@@ -16,39 +16,61 @@ import (
 // utmost it is the parabola of least squares. Between these it is chosen by leave-one-out: of all smoothings whose
 // squared error at points left out is within one standard error of the best one's, the smoothest (L. Breiman and
 // others, Classification and Regression Trees, 1984). The end points stay in, since leaving them out would ask for
-// extrapolation. Curves that turn more than once are passed over: a pump curve has one hump at most.
+// extrapolation. Curves that do not have the [Shape] asked for are passed over.
 type Fit struct {
 	low, high float64
 	pieces    []piece
 	width     float64
 	residual  float64
+	leftOut   []float64 // squared leave-one-out errors of the inner points, in order of x; nil for too few points
+	shaped    bool
 }
+
+// Shape is what physics demands of a curve: that it turns once at most, and which way.
+type Shape int
+
+// The shapes. The zero value lets a curve turn once, either way.
+const (
+	AnyShape Shape = iota // a power: rising, or with its greatest or least between
+	Hump                  // a head or an efficiency: nowhere a dip
+	Valley                // an NPSH required: nowhere a hump
+)
 
 // piece is c0 + c1 t + c2 t2 + c3 t3, t = 0 to 1 along it.
 type piece [4]float64
 
-// NewFit fits a curve to the points (x, y), in any order. Two points make a straight line, three a parabola.
+// NewFit fits a curve of a shape to the points (x, y), in any order. Two points make a straight line, three a parabola.
 // Fewer than two, two of one x, or a number that is none is an error.
-func NewFit(x, y []float64) (*Fit, error) {
+func NewFit(x, y []float64, shape Shape) (*Fit, error) {
 	if len(x) != len(y) || len(x) < 2 {
 		return nil, fmt.Errorf("%d points, want at least 2", len(x))
 	}
-	index := make([]int, len(x))
-	for i := range index {
-		index[i] = i
+	for i := range x {
 		if math.IsNaN(x[i]+y[i]) || math.IsInf(x[i]+y[i], 0) {
 			return nil, fmt.Errorf("point %d: %g, %g is no number", i+1, x[i], y[i])
 		}
 	}
-	sort.Slice(index, func(a, b int) bool { return x[index[a]] < x[index[b]] })
-	xs, ys := make([]float64, len(x)), make([]float64, len(x))
-	for i, k := range index {
-		xs[i], ys[i] = x[k], y[k]
+	xs, ys, _ := inOrder(x, y)
+	for i := range xs {
 		if i > 0 && xs[i] == xs[i-1] {
 			return nil, fmt.Errorf("two points at %g", xs[i])
 		}
 	}
-	return chooseFit(xs, ys), nil
+	return chooseFit(xs, ys, shape), nil
+}
+
+// inOrder returns the points in order of x, and the place of each among those given.
+func inOrder(x, y []float64) (xs, ys []float64, place []int) {
+	place = make([]int, len(x))
+	for i := range place {
+		place[i] = i
+	}
+	sort.Slice(place, func(a, b int) bool { return x[place[a]] < x[place[b]] })
+	xs, ys = make([]float64, len(x)), make([]float64, len(x))
+	for i, k := range place {
+		xs[i], ys[i] = x[k], y[k]
+	}
+	return xs, ys, place
 }
 
 // Range returns the least and the greatest x of the points.
@@ -56,6 +78,30 @@ func (f *Fit) Range() (low, high float64) { return f.low, f.high }
 
 // Residual returns the root mean square distance of the curve from its points.
 func (f *Fit) Residual() float64 { return f.residual }
+
+// LeaveOneOut returns the root mean square distance of the inner points from the curves that leave them out in turn; NaN
+// where there are too few points to leave one out. It is what the reading of a single point is worth.
+func (f *Fit) LeaveOneOut() float64 {
+	if f.leftOut == nil {
+		return math.NaN()
+	}
+	mean, _ := meanAndError(f.leftOut)
+	return math.Sqrt(mean)
+}
+
+// Shaped says whether the curve has the shape it was asked for; no smoothing of points that do not have it may.
+func (f *Fit) Shaped() bool { return f.shaped }
+
+// Method says in words what curve was chosen.
+func (f *Fit) Method() string {
+	switch p := f.pieces[0]; {
+	case len(f.pieces) > 1:
+		return "smoothing spline"
+	case p[2] == 0:
+		return "straight line"
+	}
+	return "parabola of least squares"
+}
 
 // Within says whether x lies in the range of the points; the range counts as closed.
 func (f *Fit) Within(x float64) bool { return f.low <= x && x <= f.high }
@@ -104,34 +150,36 @@ func greatest(low, high float64, at func(x float64) (y, slope float64)) (x, y fl
 	return x, y, low < x && x < high
 }
 
-// chooseFit tries the smoothings on points in order of x.
-func chooseFit(x, y []float64) *Fit {
+// chooseFit tries the smoothings on points in order of x. Where none has the shape it is the parabola.
+func chooseFit(x, y []float64, shape Shape) *Fit {
 	rough := polynomial(x, y, min(len(x)-1, 2))
+	rough.shaped = rough.has(shape)
 	if len(x) <= 3 {
 		return rough
 	}
-	type candidate struct {
-		fit  *Fit
-		miss []float64 // squared leave-one-out errors of the inner points
+	rough.leftOut = polynomialMiss(x, y)
+	var candidates []*Fit
+	if rough.shaped {
+		candidates = append(candidates, rough)
 	}
-	candidates := []candidate{{rough, polynomialMiss(x, y)}}
 	s := newSpline(x, y)
 	for exponent := 5.0; exponent >= -8; exponent -= 0.5 { // from smooth to free
-		fit, miss := s.smooth(math.Pow(10, exponent))
-		if fit != nil && fit.turns() <= 1 {
-			candidates = append(candidates, candidate{fit, miss})
+		fit := s.smooth(math.Pow(10, exponent))
+		if fit != nil && fit.has(shape) {
+			fit.shaped = true
+			candidates = append(candidates, fit)
 		}
 	}
 	least, margin := math.Inf(1), 0.0
 	for _, c := range candidates {
-		if m, err := meanAndError(c.miss); m < least {
+		if m, err := meanAndError(c.leftOut); m < least {
 			least, margin = m, err
 		}
 	}
 	reading := 1e-6 * (slices.Max(y) - slices.Min(y)) // an error no reader of a curve can see
 	for _, c := range candidates {
-		if m, _ := meanAndError(c.miss); m <= math.Max(least+margin, reading*reading) {
-			return c.fit
+		if m, _ := meanAndError(c.leftOut); m <= math.Max(least+margin, reading*reading) {
+			return c
 		}
 	}
 	return rough
@@ -152,20 +200,57 @@ func meanAndError(v []float64) (mean, standardError float64) {
 	return mean, math.Sqrt(standardError / (n * (n - 1)))
 }
 
-// turns counts how often the slope changes its sign.
-func (f *Fit) turns() int {
+// has says whether the curve has a shape: how often its slope changes its sign, and from which to which.
+func (f *Fit) has(shape Shape) bool {
 	const steps = 200
-	count, last := 0, 0.0
+	turns, last := 0, 0.0
 	for i := range steps + 1 {
 		_, slope := f.At(f.low + (f.high-f.low)*float64(i)/steps)
 		if slope*last < 0 {
-			count++
+			turns++
+			if shape == Hump && slope > 0 || shape == Valley && slope < 0 {
+				return false
+			}
 		}
 		if slope != 0 {
 			last = slope
 		}
 	}
-	return count
+	return turns <= 1
+}
+
+// scaled returns the curve with x and y multiplied: y times yFactor at x times xFactor.
+func (f *Fit) scaled(xFactor, yFactor float64) *Fit {
+	if f == nil {
+		return nil
+	}
+	g := *f
+	g.low, g.high, g.width = f.low*xFactor, f.high*xFactor, f.width*xFactor
+	g.residual, g.leftOut = f.residual*yFactor, nil
+	g.pieces = slices.Clone(f.pieces)
+	for k := range g.pieces {
+		for j := range g.pieces[k] {
+			g.pieces[k][j] *= yFactor
+		}
+	}
+	return &g
+}
+
+// traced returns a curve of even cubic pieces that has the values and slopes of a function at their ends (Hermite's).
+func traced(low, high float64, pieces int, at func(x float64) (y, slope float64)) *Fit {
+	f := &Fit{low: low, high: high, width: (high - low) / float64(pieces), shaped: true}
+	y, slope := at(low)
+	for k := range pieces {
+		next := high
+		if k < pieces-1 {
+			next = low + f.width*float64(k+1)
+		}
+		nextY, nextSlope := at(next)
+		m0, m1, rise := slope*f.width, nextSlope*f.width, nextY-y
+		f.pieces = append(f.pieces, piece{y, m0, 3*rise - 2*m0 - m1, m0 + m1 - 2*rise})
+		y, slope = nextY, nextSlope
+	}
+	return f
 }
 
 // measure sets the residual of a fit on its points.
@@ -249,7 +334,7 @@ func newSpline(x, y []float64) *spline {
 }
 
 // smooth solves for one weight of the penalty; nil where rounding defeats it.
-func (s *spline) smooth(weight float64) (fit *Fit, miss []float64) {
+func (s *spline) smooth(weight float64) *Fit {
 	unknowns, points := s.gram.SymmetricDim(), len(s.x)
 	a := mat.NewSymDense(unknowns, nil)
 	for i := range unknowns {
@@ -259,16 +344,16 @@ func (s *spline) smooth(weight float64) (fit *Fit, miss []float64) {
 	}
 	var cholesky mat.Cholesky
 	if !cholesky.Factorize(a) {
-		return nil, nil
+		return nil
 	}
 	var influence mat.Dense // columns: the coefficients that one point's y brings
 	if err := cholesky.SolveTo(&influence, s.basis.T()); err != nil {
-		return nil, nil
+		return nil
 	}
 	var c mat.VecDense
 	c.MulVec(&influence, mat.NewVecDense(points, s.y))
 	low, high := s.x[0], s.x[points-1]
-	fit = &Fit{low: low, high: high, width: (high - low) / float64(s.pieces)}
+	fit := &Fit{low: low, high: high, width: (high - low) / float64(s.pieces)}
 	for k := range s.pieces {
 		fit.pieces = append(fit.pieces, bSplinePiece(c.AtVec(k), c.AtVec(k+1), c.AtVec(k+2), c.AtVec(k+3)))
 	}
@@ -280,12 +365,12 @@ func (s *spline) smooth(weight float64) (fit *Fit, miss []float64) {
 			own += s.basis.At(i, j) * influence.At(j, i)
 		}
 		if !(1-own > 1e-9) { // the fit follows the point whatever it says: its leave-one-out error is lost in rounding
-			return nil, nil
+			return nil
 		}
 		e := (v - s.y[i]) / (1 - own)
-		miss = append(miss, e*e)
+		fit.leftOut = append(fit.leftOut, e*e)
 	}
-	return fit, miss
+	return fit
 }
 
 // bSpline returns the four cubic B-splines on evenly spaced knots that are not zero at t, 0 to 1 along a piece.

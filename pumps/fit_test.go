@@ -28,7 +28,7 @@ func TestFitReturnsParabola(t *testing.T) {
 	head := func(x float64) float64 { return 40 - 1.2e-5*x*x }
 	for _, n := range []int{3, 4, 5, 8, 15} {
 		x := evenly(0, 1200, n)
-		f, err := NewFit(x, at(x, head))
+		f, err := NewFit(x, at(x, head), Hump)
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -51,7 +51,7 @@ func TestFitGoesThroughGoodPoints(t *testing.T) {
 	}
 	for name, f := range curves {
 		x := evenly(0, 1, 9)
-		fit, err := NewFit(x, at(x, f))
+		fit, err := NewFit(x, at(x, f), AnyShape)
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -84,12 +84,12 @@ func TestFitSmoothsNoise(t *testing.T) {
 			y[i] += noise * rng.NormFloat64()
 			sumPoints += (y[i] - f(x[i])) * (y[i] - f(x[i]))
 		}
-		fit, err := NewFit(x, y)
+		fit, err := NewFit(x, y, AnyShape)
 		if err != nil {
 			t.Fatal(err)
 		}
-		if fit.turns() > 1 {
-			t.Errorf("turns %d times", fit.turns())
+		if !fit.Shaped() {
+			t.Error("turns more than once")
 		}
 		for i := range x {
 			v, _ := fit.At(x[i])
@@ -105,7 +105,7 @@ func TestFitSmoothsNoise(t *testing.T) {
 
 func TestFitSlopeAgainstCentralDifference(t *testing.T) {
 	x := evenly(0, 1, 9)
-	f, err := NewFit(x, at(x, func(x float64) float64 { return 30 - 4*x - 9*x*x*x }))
+	f, err := NewFit(x, at(x, func(x float64) float64 { return 30 - 4*x - 9*x*x*x }), Hump)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -120,7 +120,7 @@ func TestFitSlopeAgainstCentralDifference(t *testing.T) {
 }
 
 func TestFitBounds(t *testing.T) {
-	f, err := NewFit([]float64{2, 1}, []float64{5, 7}) // any order; two points make a line
+	f, err := NewFit([]float64{2, 1}, []float64{5, 7}, AnyShape) // any order; two points make a line
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -141,7 +141,7 @@ func TestFitBounds(t *testing.T) {
 		"infinite":   {{1, 2, 3}, {1, math.Inf(1), 3}},
 		"unequal":    {{1, 2}, {1}},
 	} {
-		if _, err := NewFit(c[0], c[1]); err == nil {
+		if _, err := NewFit(c[0], c[1], AnyShape); err == nil {
 			t.Errorf("%s: no error", name)
 		}
 	}
@@ -149,7 +149,7 @@ func TestFitBounds(t *testing.T) {
 
 func TestGreatest(t *testing.T) {
 	x := evenly(0, 2, 7)
-	f, err := NewFit(x, at(x, func(x float64) float64 { return 0.8 - (x-1.3)*(x-1.3) }))
+	f, err := NewFit(x, at(x, func(x float64) float64 { return 0.8 - (x-1.3)*(x-1.3) }), Hump)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -162,7 +162,7 @@ func BenchmarkFit(b *testing.B) {
 	x := evenly(0, 1, 9)
 	y := at(x, func(x float64) float64 { return 30 - 4*x - 9*x*x*x })
 	for b.Loop() {
-		if _, err := NewFit(x, y); err != nil {
+		if _, err := NewFit(x, y, AnyShape); err != nil {
 			b.Fatal(err)
 		}
 	}

@@ -89,3 +89,20 @@ func ExamplePump_At() {
 	// 6.53 kW
 	// 194.3 gal/min  29.7 ft  2.0 hp
 }
+
+// S. Sarkar, Fuel and Fluid Machinery worked example 10.4 (as transcribed): 12 m and 6 kW at 1450 rpm. At 1650 rpm the book has 15.54 m
+// and 8.84 kW.
+func ExamplePump_At_faster() {
+	var points []pumps.SheetPoint
+	for i, q := range []float64{0.02, 0.04, 0.06} { // the flows and the outer points are ours
+		points = append(points, pumps.SheetPoint{Flow: q, Head: 14 - 2*float64(i), Efficiency: math.NaN(), Power: (5 + float64(i)) * 1e3, NPSHRequired: math.NaN()})
+	}
+	c, err := pumps.NewCurve(0, 1450, points)
+	if err != nil {
+		fmt.Println(err)
+		return
+	}
+	d := pumps.Pump{Curve: c, Speed: 1650}.At(0.04*1650/1450, 1000)
+	fmt.Printf("%.2f m, %.2f kW\n", d.Head, d.ShaftPower/1e3)
+	// Output: 15.54 m, 8.84 kW
+}

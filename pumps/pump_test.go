@@ -138,3 +138,51 @@ func TestCurveRefusals(t *testing.T) {
 		t.Errorf("best efficiency at %g", q)
 	}
 }
+
+// Leakage moves the curve by an amount that goes with the root of the head, keeps what passes the impeller on the curve, and
+// takes power and NPSH for what goes round within; at another speed it scales with everything else.
+func TestLeakage(t *testing.T) {
+	c := fullSheet(t, false)
+	best, _, _ := c.BestEfficiency()
+	bestHead, _ := c.head.At(best)
+	for _, n := range []float64{1, 0.8, 1.1} {
+		p := Pump{Curve: c, Speed: 1480 * n, Leakage: 0.06}
+		for q := 120.0; q <= 500; q += 20 {
+			flow := q / 3600 * n
+			d := p.At(flow, 1000)
+			lost := 0.06 * best * n * math.Sqrt(d.Head/n/n/bestHead)
+			through := Pump{Curve: c, Speed: 1480 * n}.At(flow+lost, 1000)
+			if !(math.Abs(through.Head/d.Head-1) < 1e-11) || !(math.Abs(through.ShaftPower/d.ShaftPower-1) < 1e-11) {
+				t.Fatalf("%g m3/h: %+v, through the impeller %+v", q, d, through)
+			}
+			if w := waterPower(1000, flow, d.Head) / d.ShaftPower; !(math.Abs(d.Efficiency/w-1) < 1e-9) {
+				t.Fatalf("%g m3/h: efficiency %g, want %g", q, d.Efficiency, w)
+			}
+			if d.NPSHRequired != through.NPSHRequired && !(math.Abs(d.NPSHRequired-through.NPSHRequired) < 1e-9) && !math.IsNaN(through.NPSHRequired) {
+				t.Fatalf("%g m3/h: NPSH required %g, want %g", q, d.NPSHRequired, through.NPSHRequired)
+			}
+			const h = 1e-6
+			low, _ := p.Head(flow - h)
+			high, _ := p.Head(flow + h)
+			if _, slope := p.Head(flow); !(math.Abs((high-low)/(2*h)-slope) <= 1e-4*math.Abs(slope)+1e-4) {
+				t.Fatalf("%g m3/h: slope %g, difference %g", q, slope, (high-low)/(2*h))
+			}
+		}
+		low, high := p.Range()
+		if !(low < 80/3600.0*n && high < 560/3600.0*n) {
+			t.Errorf("known from %g to %g", low*3600, high*3600)
+		}
+	}
+}
+
+// At another speed the NPSH required lies between those of the powers 1.3 and 2 of the speed; the higher is the cautious one.
+func TestNPSHRequiredHigh(t *testing.T) {
+	c := fullSheet(t, false)
+	for n, exponent := range map[float64]float64{0.8: 1.3, 1: 2, 1.2: 2} {
+		p := Pump{Curve: c, Speed: 1480 * n}
+		at := Pump{Curve: c}.NPSHRequired(300 / 3600.0)
+		if got, want := p.NPSHRequiredHigh(300/3600.0*n), at*math.Pow(n, exponent); !(math.Abs(got/want-1) < 1e-12) {
+			t.Errorf("speed %g: %g, want %g", n, got, want)
+		}
+	}
+}

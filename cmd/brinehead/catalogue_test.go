@@ -73,7 +73,7 @@ func TestCatalogueFind(t *testing.T) {
 	if code, _, stderr := brinehead("catalogue", "limits", "--out", folder); code != exitMet || stderr != "" {
 		t.Errorf("exit code %d, %s", code, stderr)
 	}
-	if content, err := os.ReadFile(filepath.Join(folder, "catalogue-limits.csv")); err != nil || !strings.HasPrefix(string(content), "limit,on,unit,default,source\n") {
+	if content, err := os.ReadFile(filepath.Join(folder, "catalogue-limits.csv")); err != nil || !strings.Contains(string(content), "\nlimit,on,unit,figure,source,mark\n") || !strings.Contains(string(content), "\n\"acceptance grade 2B, flow\",test against the guaranteed figure,%,\"'-8, +8\",\"ISO 9906:2012, table 8\",M\n") {
 		t.Errorf("%.60q, %v", content, err)
 	}
 	for want, args := range map[string][]string{

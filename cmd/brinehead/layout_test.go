@@ -221,7 +221,7 @@ func TestLayoutRefusals(t *testing.T) {
 
 // The leak of an idle pump's non-return valve runs back and is told.
 func TestLeakInAJob(t *testing.T) {
-	folder := copyJob(t, seawater, [3]string{"pumps.csv", "motor [kW]", "motor [kW],leak [m3/h]"}, [3]string{"pumps.csv", ",45\n", ",45,12\n"})
+	folder := copyJob(t, seawater, [3]string{"pumps.csv", "motor [kW]", "motor [kW],leak [m3/h]"}, [3]string{"pumps.csv", ",45,", ",45,12,"})
 	answer, _ := checkJSON(t, folder, "--condition", "loaded, North Sea winter")
 	c := answer.Conditions[0]
 	p := c.Pumps[1]

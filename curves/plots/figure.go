@@ -52,12 +52,15 @@ const (
 	given  weight = iota // thick: what is there
 	asked                // thin: what is asked for
 	beyond               // dotted: no data
+	edged                // hair: the edge of a band, a level
 )
 
 func (w weight) style(c color.Color) draw.LineStyle {
 	switch w {
 	case asked:
 		return draw.LineStyle{Color: c, Width: vg.Points(0.9)}
+	case edged:
+		return draw.LineStyle{Color: c, Width: vg.Points(0.5)}
 	case beyond:
 		return draw.LineStyle{Color: c, Width: vg.Points(1.6), Dashes: []vg.Length{vg.Points(1.5), vg.Points(3.5)}}
 	}
@@ -71,6 +74,7 @@ type stroke struct {
 	weight weight
 	colour color.Color
 	rings  bool // open rings at the points in place of a line
+	ticks  bool // a cross at each point beside the line
 }
 
 // bracket shows a difference between two values at one flow.
@@ -84,6 +88,7 @@ type bracket struct {
 type figure struct {
 	title, subtitle, quantity string
 	units                     Units
+	bands                     []stroke // filled outlines
 	strokes                   []stroke
 	marks                     []Mark // in axis units
 	limits                    []Bound
@@ -128,6 +133,41 @@ func (f *figure) pumpLine(p PumpLine, c color.Color) {
 	p.Digitised.Name = ""
 	f.line(p.Digitised, given, c)
 	f.strokes[len(f.strokes)-1].rings = true
+}
+
+// band fills what lies between two lines in a light shade of a colour, where both are known, and names it along the upper one.
+func (f *figure) band(b Band, c color.RGBA) {
+	outline := stroke{colour: shade(c)}
+	var below plotter.XYs
+	edge := Line{Name: b.Name}
+	for i := range min(len(b.Low.Value), len(b.High.Value)) {
+		low, high := b.Low.Value[i], b.High.Value[i]
+		if !finite(low) || !finite(high) {
+			continue
+		}
+		x := b.Low.Flow[i] * f.units.FlowFactor
+		outline.points = append(outline.points, plotter.XY{X: x, Y: high * f.units.HeadFactor})
+		below = append(below, plotter.XY{X: x, Y: low * f.units.HeadFactor})
+		edge.Flow, edge.Value = append(edge.Flow, b.Low.Flow[i]), append(edge.Value, high)
+	}
+	slices.Reverse(below)
+	outline.points = append(outline.points, below...)
+	if len(below) > 1 {
+		f.bands = append(f.bands, outline)
+		f.line(edge, edged, c)
+	}
+}
+
+// shade returns a light shade of a colour.
+func shade(c color.RGBA) color.RGBA {
+	light := func(v uint8) uint8 { return uint8(255 - (255-int(v))*18/100) }
+	return color.RGBA{light(c.R), light(c.G), light(c.B), 255}
+}
+
+// level draws a thin line through the points of one efficiency, with a tick at each.
+func (f *figure) level(l Line) {
+	f.line(l, edged, inkColour)
+	f.strokes[len(f.strokes)-1].ticks = true
 }
 
 func (f *figure) duty(marks []Mark) {
@@ -287,6 +327,9 @@ func (f *figure) Plot(c draw.Canvas, p *plot.Plot) {
 	toX, toY := p.Transforms(&c)
 	pen := &pen{canvas: c, x: toX, y: toY}
 	f.drawn = pen
+	for _, b := range f.bands {
+		pen.fill(b)
+	}
 	for _, b := range f.limits {
 		pen.bound(b)
 	}

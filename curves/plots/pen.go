@@ -49,6 +49,15 @@ func (p *pen) keep(box vg.Rectangle) {
 	cells(box, func(c cell) { p.taken[c] = append(p.taken[c], box) })
 }
 
+// fill fills an outline where it lies within the frame.
+func (p *pen) fill(s stroke) {
+	var outline []vg.Point
+	for _, xy := range s.points {
+		outline = append(outline, vg.Point{X: p.x(xy.X), Y: p.y(xy.Y)})
+	}
+	p.canvas.FillPolygon(s.colour, p.canvas.ClipPolygonXY(outline))
+}
+
 // stroke draws a line where it lies within the frame, or rings at its points.
 func (p *pen) stroke(s stroke) {
 	if s.rings {
@@ -59,6 +68,15 @@ func (p *pen) stroke(s stroke) {
 			}
 		}
 		return
+	}
+	if s.ticks {
+		cross := draw.GlyphStyle{Color: s.colour, Radius: vg.Points(2.2), Shape: draw.CrossGlyph{}}
+		for _, xy := range s.points {
+			if at := (vg.Point{X: p.x(xy.X), Y: p.y(xy.Y)}); p.canvas.Contains(at) {
+				p.canvas.DrawGlyph(cross, at)
+				p.remember([]vg.Point{at, at})
+			}
+		}
 	}
 	var part []vg.Point
 	flush := func() {

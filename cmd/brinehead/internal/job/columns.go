@@ -71,6 +71,7 @@ var tables = []table{
 		word("state", "open", "shut"),
 		number("temperature", temperature, between(-5, 150)),
 		number("high point", length, between(-100, 200)),
+		number("design pressure", pressure, above(0, 1e8)),
 		text("note"),
 	}},
 	{name: fittingsTable, required: true, key: "tag", columns: []column{
@@ -97,6 +98,7 @@ var tables = []table{
 		number("mesh", plain, between(0, 1000)),
 		{name: "cuts", quantity: plain, within: between(1, 20), integer: true},
 		number("length", length, between(0, 100)),
+		number("design pressure", pressure, above(0, 1e8)),
 		text("note"),
 	}},
 	{name: pumpsTable, required: true, key: "pump", columns: []column{
@@ -107,6 +109,15 @@ var tables = []table{
 		number("motor", power, above(0, 1e8)),
 		number("wear", share, below(0, 1)),
 		number("leak", capacity, above(0, 1e5)),
+		number("internal leakage", share, between(0, 0.5)),
+		number("inlet diameter", length, between(0.005, 5)),
+		number("frequency", frequency, between(10, 400)),
+		{name: "poles", quantity: plain, within: between(2, 48), integer: true},
+		number("slip", share, between(0, 0.2)),
+		number("volts", voltage, between(12, 15000)),
+		number("motor efficiency", share, between(0.2, 1)),
+		number("power factor", plain, between(0.1, 1)),
+		number("design pressure", pressure, above(0, 1e8)),
 		text("note"),
 	}},
 	{name: curvesTable, required: true, key: "curve", columns: []column{
@@ -130,7 +141,8 @@ var tables = []table{
 	}},
 	{name: limitsTable, columns: []column{
 		word("limit", "minimum flow", "maximum flow", "NPSH margin", "NPSH ratio", "maximum velocity", "minimum velocity", "maximum shaft power",
-			"least share of best-efficiency flow", "greatest share of best-efficiency flow", "minimum pressure", "minimum absolute pressure",
+			"least share of best-efficiency flow", "greatest share of best-efficiency flow", "least allowable share of best-efficiency flow",
+			"greatest allowable share of best-efficiency flow", "maximum shaft power along the curve", "least motor reserve", "maximum shut-off pressure", "minimum pressure", "minimum absolute pressure",
 			"minimum immersion", "maximum outlet temperature").must(),
 		text("on").must(),
 		column{name: "value", quantity: plain, within: anyNumber, perRow: true}.must(),
@@ -161,6 +173,8 @@ var limitQuantities = map[string]measure{
 	"maximum velocity": {velocity, above(0, 100)}, "minimum velocity": {velocity, between(0, 100)},
 	"maximum shaft power":                 {power, above(0, 1e8)},
 	"least share of best-efficiency flow": {share, between(0, 10)}, "greatest share of best-efficiency flow": {share, above(0, 10)},
+	"least allowable share of best-efficiency flow": {share, between(0, 10)}, "greatest allowable share of best-efficiency flow": {share, above(0, 10)},
+	"maximum shaft power along the curve": {power, above(0, 1e8)}, "least motor reserve": {share, above(0, 10)}, "maximum shut-off pressure": {pressure, above(0, 1e8)},
 	"minimum pressure": {pressure, between(-1.1e5, 1e8)}, "minimum absolute pressure": {absolutePressure, between(0, 1e8)},
 	"minimum immersion": {length, between(0, 50)}, "maximum outlet temperature": {temperature, between(-5, 150)},
 }
@@ -179,7 +193,7 @@ var settable = map[string][]string{
 	pointsTable:   {"level", "pressure", "draw"},
 	runsTable:     {"state", "roughness", "fouling", "temperature"},
 	fittingsTable: {"blockage", "opening", "k", "kv", "rated drop"},
-	pumpsTable:    {"speed", "wear", "impeller", "leak"},
+	pumpsTable:    {"speed", "wear", "impeller", "leak", "internal leakage", "frequency"},
 }
 
 // TableContract is what a table of a job folder may hold.

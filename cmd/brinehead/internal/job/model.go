@@ -20,8 +20,9 @@ type Job struct {
 	Name   string // of the folder
 	Tables *Tables
 
-	curves map[string][]*pumps.Curve // by name of the curve, one for each impeller and speed
-	names  names
+	curves  map[string][]*pumps.Curve // by name of the curve, one for each impeller and speed
+	between *betweenCurves
+	names   names
 }
 
 // names is what the catalogues know of the names in the tables, looked up once for all conditions.
@@ -77,7 +78,7 @@ func Read(name string, folder, change fs.FS) (*Job, error) {
 	if err != nil {
 		return nil, err
 	}
-	j := &Job{Name: name, Tables: tables, curves: map[string][]*pumps.Curve{}, names: lookUp(tables)}
+	j := &Job{Name: name, Tables: tables, curves: map[string][]*pumps.Curve{}, between: &betweenCurves{}, names: lookUp(tables)}
 	var faults Faults
 	faults = append(faults, j.fitCurves()...)
 	if faults == nil {
@@ -146,6 +147,15 @@ func (j *Job) Conditions() []string {
 	return names
 }
 
+// Draughts returns the draughts of the job's conditions, NaN where one gives none.
+func (j *Job) Draughts() []float64 {
+	var draughts []float64
+	for _, c := range j.Tables.Conditions {
+		draughts = append(draughts, c.Draught.Or(math.NaN()))
+	}
+	return draughts
+}
+
 // condition finds a condition's row.
 func (j *Job) condition(name string) (ConditionRow, error) {
 	for _, c := range j.Tables.Conditions {
@@ -165,6 +175,13 @@ type Case struct {
 	Walls    []Wall // by run
 
 	HighPoints []float64 // by run, m above the keel; NaN where the table gives none
+	Trims      []Trim    // by pump
+	Design     Design
+}
+
+// Design holds the design pressures of the tables, Pa gauge; NaN where none is given.
+type Design struct {
+	Runs, Fittings, Pumps []float64 // by run, by fitting of one run after the other, by pump
 }
 
 // Supplied is a figure that comes from a catalogue or a default, not from the tables.
@@ -181,15 +198,20 @@ type Wall struct {
 	Least, Greatest hydraulics.Bound
 }
 
-// Build builds one condition: the tables with the condition's own values in place of theirs, and then those of set. The
-// error is Faults that name the rows concerned.
+// Build builds one condition: the tables with the condition's own values in place of theirs, and then those of set. An
+// impeller smaller than all that are digitised is trimmed after ISO 9906. The error is Faults that name the rows concerned.
 func (j *Job) Build(name string, set ...Override) (*Case, error) {
+	return j.BuildTrimmed(name, pumps.ISO9906, set...)
+}
+
+// BuildTrimmed is Build with a method of trim.
+func (j *Job) BuildTrimmed(name string, method pumps.TrimMethod, set ...Override) (*Case, error) {
 	row, err := j.condition(name)
 	if err != nil {
 		return nil, err
 	}
 	row.Overrides = append(slices.Clone(row.Overrides), set...)
-	b := &builder{job: j, condition: row, point: map[string]int{}, plant: &curves.Plant{}}
+	b := &builder{job: j, condition: row, trim: method, point: map[string]int{}, plant: &curves.Plant{}}
 	b.water()
 	b.points()
 	b.runs()
@@ -205,7 +227,7 @@ func (j *Job) Build(name string, set ...Override) (*Case, error) {
 		return nil, Faults{{Place: Place{File: "runs.csv"}, Found: err.Error(),
 			Want: fmt.Sprintf("a circuit that can be solved (condition %s, line %d of conditions.csv)", row.Condition.Value, place.Line)}}
 	}
-	return &Case{b.plant, row, b.supplied, b.walls, b.highPoints}, nil
+	return &Case{b.plant, row, b.supplied, b.walls, b.highPoints, b.trims, b.design}, nil
 }
 
 // builder gathers the plant of one condition and the faults met on the way.
@@ -217,6 +239,9 @@ type builder struct {
 	supplied   []Supplied
 	walls      []Wall
 	highPoints []float64
+	trim       pumps.TrimMethod
+	trims      []Trim
+	design     Design
 	faults     Faults
 }
 
@@ -322,12 +347,17 @@ func (b *builder) runs() {
 		} else {
 			for _, f := range fittings[fold(r.Run.Value)] {
 				fitting, shut := b.fitting(f, run.Pipe)
+				if f.Design.Given && !f.Tag.Given() {
+					b.fault(f.Design.Place, f.Fitting.Value, "a tag beside its design pressure, by which the verdict names it", "")
+				}
+				b.design.Fittings = append(b.design.Fittings, f.Design.Or(math.NaN()))
 				run.Fittings = append(run.Fittings, fitting)
 				run.Shut = run.Shut || shut
 			}
 		}
 		b.plant.Network.Runs = append(b.plant.Network.Runs, run)
 		b.highPoints = append(b.highPoints, r.HighPoint.Or(math.NaN()))
+		b.design.Runs = append(b.design.Runs, r.Design.Or(math.NaN()))
 		if from, to := b.plant.Elevations[run.From], b.plant.Elevations[run.To]; r.HighPoint.Given && r.HighPoint.Value < math.Max(from, to) {
 			b.fault(r.HighPoint.Place, fmt.Sprintf("%g m", r.HighPoint.Value), fmt.Sprintf("at least the elevations of the run's ends, %g and %g m", from, to), "")
 		}
@@ -616,73 +646,4 @@ func nameOf(r FittingRow) string {
 func isNonReturn(name string) bool {
 	name = strings.ReplaceAll(fold(name), "-", " ")
 	return strings.Contains(name, "non return") || strings.Contains(name, "check valve")
-}
-
-func (b *builder) pumps() {
-	running := b.condition.RunningList
-	for _, r := range b.job.Tables.Pumps {
-		from, to := b.point[fold(r.From.Value)], b.point[fold(r.To.Value)]
-		p := curves.Pump{Name: r.Pump.Value, From: from, To: to,
-			Datum:   r.Datum.Or(b.plant.Elevations[from]),
-			Running: !b.condition.NoneRuns && (len(running) == 0 || slices.ContainsFunc(running, func(t Text) bool { return fold(t.Value) == fold(r.Pump.Value) })),
-			Motor:   r.Motor.Or(math.NaN()),
-			LeakKv:  b.number(r.Pump, "leak", r.Leak).Or(0),
-			Pump: pumps.Pump{Curve: b.curve(r), Speed: b.number(r.Pump, "speed", r.Speed).Or(0),
-				Wear: b.number(r.Pump, "wear", r.Wear).Or(0)}}
-		if !p.Running && p.LeakKv > 0 {
-			b.letLeak(to)
-		}
-		b.plant.Pumps = append(b.plant.Pumps, p)
-	}
-}
-
-// letLeak opens the non-return valves of the runs that begin at an idle pump's delivery: the leak given for the pump is
-// theirs.
-func (b *builder) letLeak(delivery int) {
-	for k := range b.plant.Network.Runs {
-		run := &b.plant.Network.Runs[k]
-		if run.From != delivery {
-			continue
-		}
-		for i := range run.Fittings {
-			run.Fittings[i].NonReturn = false
-		}
-	}
-}
-
-// curve finds the digitised curve of a pump: of its impeller, and of the speed nearest to its own.
-func (b *builder) curve(r PumpRow) *pumps.Curve {
-	sheets := b.job.curves[fold(r.Curve.Value)]
-	impeller := b.number(r.Pump, "impeller", r.Impeller)
-	if impeller.Given {
-		sheets = slices.DeleteFunc(slices.Clone(sheets), func(c *pumps.Curve) bool {
-			return c.Impeller != 0 && math.Abs(c.Impeller-impeller.Value) > 1e-6
-		})
-	}
-	diameters := func(list []*pumps.Curve) (text []string) {
-		for _, c := range list {
-			if d := fmt.Sprintf("%g mm", c.Impeller*1e3); !slices.Contains(text, d) {
-				text = append(text, d)
-			}
-		}
-		return text
-	}
-	switch all := diameters(b.job.curves[fold(r.Curve.Value)]); {
-	case len(sheets) == 0:
-		b.fault(impeller.Place, fmt.Sprintf("%g mm", impeller.Value*1e3), "a digitised diameter of "+r.Curve.Value+": "+strings.Join(all, ", "), "")
-		return nil
-	case len(diameters(sheets)) > 1:
-		b.fault(r.Curve.Place, r.Curve.Value, "an impeller diameter, since the curve has several: "+strings.Join(all, ", "), "fill in the column impeller [mm]")
-		return nil
-	}
-	speed := b.number(r.Pump, "speed", r.Speed)
-	if !speed.Given {
-		if len(sheets) > 1 {
-			b.fault(r.Curve.Place, r.Curve.Value, "a speed, since the curve is digitised at several", "fill in the column speed [rpm]")
-		}
-		return sheets[0]
-	}
-	return slices.MinFunc(sheets, func(a, c *pumps.Curve) int {
-		return int(math.Copysign(1, math.Abs(a.Speed-speed.Value)-math.Abs(c.Speed-speed.Value)))
-	})
 }

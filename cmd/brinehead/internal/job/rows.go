@@ -87,6 +87,7 @@ type RunRow struct {
 	State       Text   `csv:"state"`
 	Temperature Number `csv:"temperature"`
 	HighPoint   Number `csv:"high point"`
+	Design      Number `csv:"design pressure"`
 	Note        Text   `csv:"note"`
 }
 
@@ -117,22 +118,32 @@ type FittingRow struct {
 	Mesh         Number `csv:"mesh"`
 	Cuts         Number `csv:"cuts"`
 	Length       Number `csv:"length"`
+	Design       Number `csv:"design pressure"`
 	Note         Text   `csv:"note"`
 }
 
 // PumpRow is a row of pumps.csv.
 type PumpRow struct {
-	Pump     Text   `csv:"pump"`
-	From     Text   `csv:"from"`
-	To       Text   `csv:"to"`
-	Curve    Text   `csv:"curve"`
-	Datum    Number `csv:"datum"`
-	Impeller Number `csv:"impeller"`
-	Speed    Number `csv:"speed"`
-	Motor    Number `csv:"motor"`
-	Wear     Number `csv:"wear"`
-	Leak     Number `csv:"leak"`
-	Note     Text   `csv:"note"`
+	Pump            Text   `csv:"pump"`
+	From            Text   `csv:"from"`
+	To              Text   `csv:"to"`
+	Curve           Text   `csv:"curve"`
+	Datum           Number `csv:"datum"`
+	Impeller        Number `csv:"impeller"`
+	Speed           Number `csv:"speed"`
+	Motor           Number `csv:"motor"`
+	Wear            Number `csv:"wear"`
+	Leak            Number `csv:"leak"`
+	Leakage         Number `csv:"internal leakage"`
+	InletDiameter   Number `csv:"inlet diameter"`
+	Frequency       Number `csv:"frequency"`
+	Poles           Number `csv:"poles"`
+	Slip            Number `csv:"slip"`
+	Volts           Number `csv:"volts"`
+	MotorEfficiency Number `csv:"motor efficiency"`
+	PowerFactor     Number `csv:"power factor"`
+	Design          Number `csv:"design pressure"`
+	Note            Text   `csv:"note"`
 }
 
 // CurveRow is a row of pump_curves.csv: one digitised point.

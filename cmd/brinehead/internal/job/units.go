@@ -61,6 +61,8 @@ var (
 	angle            = Quantity{"angle", []Unit{{"deg", []string{"°", "degree", "degrees"}, math.Pi / 180, 0}, {"rad", nil, 1, 0}}}
 	area             = Quantity{"area", []Unit{{"m2", []string{"m²"}, 1, 0}, {"mm2", []string{"mm²"}, 1e-6, 0}, {"cm2", []string{"cm²"}, 1e-4, 0}, {"in2", nil, inch * inch, 0}}}
 	density          = Quantity{"density", []Unit{{"kg/m3", []string{"kg/m³"}, 1, 0}}}
+	frequency        = Quantity{"frequency", []Unit{{"Hz", nil, 1, 0}}}
+	voltage          = Quantity{"voltage", []Unit{{"V", nil, 1, 0}, {"kV", nil, 1e3, 0}}}
 	current          = Quantity{"current", []Unit{{"A", nil, 1, 0}}}
 	ratio            = Quantity{"ratio", []Unit{{"-", []string{""}, 1, 0}}}
 	plain            = Quantity{"number", nil}
@@ -68,7 +70,7 @@ var (
 )
 
 // quantities are those with units, for saying of what a misplaced unit is one.
-var quantities = []Quantity{length, flow, {"pressure", pressureUnits("")}, pressure, absolutePressure, power, temperature, speed, share, velocity, salinity, density, current, angle, area}
+var quantities = []Quantity{length, flow, {"pressure", pressureUnits("")}, pressure, absolutePressure, power, temperature, speed, share, velocity, salinity, density, current, voltage, frequency, angle, area}
 
 // pressureUnits returns the units of pressure, which may bear the mark of a gauge pressure (g) or of an absolute one (a):
 // "barg", "bar g", "bar(g)". A unit without a mark is taken as what its column holds; with the other mark it is refused.

@@ -24,6 +24,12 @@ func WriteCheckText(w io.Writer, a *study.Check, u Units) error {
 		lines = append(lines, "")
 		lines = append(lines, conditionLines(&a.Conditions[i], u, len(a.Conditions) == 1)...)
 	}
+	if len(a.SheetNotes) > 0 {
+		lines = append(lines, "", "Pump sheets (brinehead pump shows them whole)")
+		for _, n := range a.SheetNotes {
+			lines = append(lines, wrap("  ", "    ", n)...)
+		}
+	}
 	if len(a.Supplied) > 0 {
 		lines = append(lines, "", fmt.Sprintf("%s from catalogues and defaults, where the tables leave it open", counted(len(a.Supplied), "figure")))
 		if len(a.Conditions) == 1 {

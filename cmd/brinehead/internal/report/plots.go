@@ -18,11 +18,7 @@ func conditionPlots(a *study.Check, c *study.Condition, u Units, stem string) ([
 		return nil, nil
 	}
 	title := fmt.Sprintf("%s: %s", a.Job, c.Condition)
-	units := plots.Units{}
-	if u == US {
-		flow, head := usCustomary["m3/h"], usCustomary["m"]
-		units = plots.Units{FlowName: flow.name, FlowFactor: 3600 * flow.factor, HeadName: head.name, HeadFactor: head.factor}
-	}
+	units := plotUnits(u)
 	head := plots.HeadChart{Title: title, Subtitle: waterText(c, u), Units: units}
 	npsh := plots.NPSHChart{Title: title, Subtitle: waterText(c, u), Units: units}
 	schematic := plots.Schematic{Title: title, Subtitle: waterText(c, u), Units: units}

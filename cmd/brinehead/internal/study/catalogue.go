@@ -7,6 +7,7 @@ import (
 	"strings"
 
 	"brinehead/hydraulics"
+	"brinehead/pumps"
 )
 
 // Catalogue is the answer to `catalogue`: one list of what the tables may name, a row an entry.
@@ -34,8 +35,8 @@ var catalogueLists = []catalogueList{
 		[]string{"material", "state or service", "bore [mm]", "roughness [mm]", "least velocity [m/s]", "greatest velocity [m/s]", "source", "mark"}, materialRows, materialNotes},
 	{"fittings", "fittings with their loss, its method and its scatter",
 		[]string{"fitting", "other names", "needs", "may have", "method", "valid", "scatter", "source", "mark"}, fittingRows, markNotes},
-	{"limits", "limits that can be judged, and their defaults",
-		[]string{"limit", "on", "unit", "default", "source"}, limitRows, func([][]string) []string { return nil }},
+	{"limits", "limits that can be judged with their defaults, rules of practice, acceptance grades",
+		[]string{"limit", "on", "unit", "figure", "source", "mark"}, limitRows, limitNotes},
 }
 
 // CatalogueLists names the lists.
@@ -172,9 +173,39 @@ func markNotes([][]string) (notes []string) {
 
 func limitRows() (rows [][]string) {
 	defaults := map[string]string{"NPSH margin": "0.6 or 1.0", "NPSH ratio": "1.1 or 1.2", "maximum velocity": "by material, or 3.0", "minimum velocity": "by material", "minimum absolute pressure": "0.3",
-		"least share of best-efficiency flow": "70", "greatest share of best-efficiency flow": "120", "maximum shaft power": "the motor's rating"}
+		"least share of best-efficiency flow": "70", "greatest share of best-efficiency flow": "120", "maximum shaft power": "the motor's rating",
+		"least allowable share of best-efficiency flow": "50", "greatest allowable share of best-efficiency flow": "125", "maximum shaft power along the curve": "the motor's rating",
+		"least motor reserve": "110 to 135", "maximum shut-off pressure": "the design pressures"}
 	for _, k := range limitKinds {
-		rows = append(rows, []string{k.name, strings.Join(k.on, ", "), k.unit, defaults[k.name], defaultSources[k.name]})
+		rows = append(rows, []string{k.name, strings.Join(k.on, ", "), k.unit, defaults[k.name], defaultSources[k.name], ""})
+	}
+	for _, p := range pumps.Practices() {
+		rows = append(rows, []string{p.Rule, p.AppliesTo, p.Unit, fmt.Sprintf("%g", p.Value), p.Source, string(p.Mark)})
+	}
+	for _, g := range pumps.Grades() {
+		for _, t := range []struct {
+			quantity string
+			pumps.Tolerance
+		}{{"flow", g.Flow}, {"head", g.Head}, {"power", g.Power}, {"efficiency", g.Efficiency}} {
+			if t.Source != "" {
+				rows = append(rows, []string{"acceptance grade " + g.Name + ", " + t.quantity, "test against the guaranteed figure", "%", tolerance(t.Tolerance), t.Source, string(t.Mark)})
+			}
+		}
 	}
 	return rows
+}
+
+// tolerance writes how far a figure may lie below and above, in per cent.
+func tolerance(t pumps.Tolerance) string {
+	side := func(sign string, x float64) string {
+		if math.IsInf(x, 1) {
+			return "no limit " + map[string]string{"-": "below", "+": "above"}[sign]
+		}
+		return fmt.Sprintf("%s%.3g", sign, 100*x)
+	}
+	return side("-", t.Below) + ", " + side("+", t.Above)
+}
+
+func limitNotes(rows [][]string) []string {
+	return append(pumps.PracticeNotes(), markNotes(rows)...)
 }

@@ -13,6 +13,7 @@ import (
 	"brinehead/curves"
 	"brinehead/fluids"
 	"brinehead/hydraulics"
+	"brinehead/pumps"
 )
 
 // Check is the answer to `check`: every condition of a job with its operating points and its limits judged. Its JSON
@@ -23,6 +24,7 @@ type Check struct {
 	Conditions []Condition `json:"conditions"`
 	Defaults   []Default   `json:"defaults"`
 	Supplied   []Supplied  `json:"supplied"`
+	SheetNotes []string    `json:"sheet_notes"` // what is odd about the digitised curves
 
 	Failed []error `json:"-"` // *NoSolution of each condition that could not be solved
 }
@@ -42,6 +44,8 @@ type Condition struct {
 
 	solved  *curves.Solved // nil where there is no solution
 	built   *job.Case
+	deepest float64  // draught of all conditions of the job, m
+	shut    *shutOff // once it is asked
 	remarks []string // notes that give figures, kept for a sound solution
 }
 
@@ -70,6 +74,20 @@ type Pump struct {
 	BestShare     Figure `json:"best_efficiency_share"`
 	Extrapolated  bool   `json:"extrapolated"`
 	HeldShut      bool   `json:"held_shut"`
+
+	NPSHRequiredHigh Figure `json:"npsh_required_high_m"` // the higher of what its speed may do to it
+	Speed            Figure `json:"speed_rpm"`
+	Impeller         Figure `json:"impeller_mm"`
+	CurveOrigin      string `json:"curve_origin"` // "digitised", or how the curve was made
+	MotorLoad        Figure `json:"motor_load"`   // shaft power over the motor's rating
+	MotorCurrent     Figure `json:"motor_current_A"`
+	CurrentBand      Figure `json:"motor_current_band"`            // by what share it may be off
+	GreatestPower    Figure `json:"greatest_shaft_power_kW"`       // over the digitised curve
+	GreatestAt       Figure `json:"greatest_shaft_power_flow_m3h"` // where
+	GreatestAtEnd    bool   `json:"greatest_shaft_power_at_end"`   // that is the end of what is digitised: beyond it may be more
+
+	// Trim holds what each method of trim gives, where the impeller is smaller than all digitised ones.
+	Trim []TrimDuty `json:"trim"`
 
 	// Crossings are all flows at which a drooping curve meets the system; none for a curve that only falls.
 	Crossings []Crossing `json:"crossings"`
@@ -144,7 +162,7 @@ func Checked(j *job.Job, only []string, version string) (*Check, error) {
 		only = j.Conditions()
 	}
 	limits := newLimits(j)
-	answer := &Check{Job: j.Name, Version: version, Defaults: limits.defaults, Conditions: make([]Condition, len(only))}
+	answer := &Check{Job: j.Name, Version: version, Defaults: limits.defaults, Conditions: make([]Condition, len(only)), SheetNotes: SheetNotes(j)}
 	faults, failures := make([]error, len(only)), make([]error, len(only))
 	one := func(i int, near *curves.Solved) {
 		answer.Conditions[i], faults[i], failures[i] = checkedCondition(j, limits, only[i], near)
@@ -169,7 +187,13 @@ func Checked(j *job.Job, only []string, version string) (*Check, error) {
 			answer.Failed = append(answer.Failed, failures[i])
 		}
 		answer.supply(answer.Conditions[i].built.Supplied)
+		for _, n := range answer.Conditions[i].trimNotes() {
+			if !slices.Contains(answer.SheetNotes, n) {
+				answer.SheetNotes = append(answer.SheetNotes, n)
+			}
+		}
 	}
+	answer.Defaults = slices.DeleteFunc(answer.Defaults, func(d Default) bool { return !answer.judges(d.Limit) })
 	if len(only) == len(j.Conditions()) {
 		if err := wrongWay(j, answer.Conditions).Err(); err != nil {
 			return nil, err
@@ -178,13 +202,40 @@ func Checked(j *job.Job, only []string, version string) (*Check, error) {
 	return answer, nil
 }
 
-// checkedCondition solves and judges one condition. A fault is of the tables; a failure is a *NoSolution.
+// checkedCondition solves and judges one condition; where an impeller is trimmed by a law, by every method of trim, and a
+// limit that they do not agree on is not judged. A fault is of the tables; a failure is a *NoSolution.
 func checkedCondition(j *job.Job, limits *limits, name string, near *curves.Solved) (c Condition, fault, failure error) {
-	built, err := j.Build(name)
+	const first = pumps.ISO9906 // whose figures are given
+	c, fault, failure = conditionTrimmed(j, limits, name, first, near)
+	if fault != nil || failure != nil || !slices.ContainsFunc(c.built.Trims, job.Trim.ByLaw) {
+		return c, fault, failure
+	}
+	all := map[pumps.TrimMethod]*Condition{first: &c}
+	for _, m := range pumps.TrimMethods() {
+		if m == first {
+			continue
+		}
+		other, fault, failure := conditionTrimmed(j, limits, name, m, near)
+		if fault != nil {
+			return c, fault, nil
+		}
+		if failure != nil {
+			c.Notes = append(c.Notes, fmt.Sprintf("trimmed by %s: %v", m, failure))
+		}
+		all[m] = &other
+	}
+	c.weigh(all)
+	return c, nil, nil
+}
+
+// conditionTrimmed solves and judges one condition with one method of trim.
+func conditionTrimmed(j *job.Job, limits *limits, name string, method pumps.TrimMethod, near *curves.Solved) (c Condition, fault, failure error) {
+	built, err := j.BuildTrimmed(name, method)
 	if err != nil {
 		return c, err, nil
 	}
-	c = Condition{Condition: built.Row.Condition.Value, Water: waterOf(built.Plant), Draught: Figure(built.Row.Draught.Or(math.NaN())), built: built}
+	c = Condition{Condition: built.Row.Condition.Value, Water: waterOf(built.Plant), Draught: Figure(built.Row.Draught.Or(math.NaN())), built: built,
+		deepest: deepestDraught(j.Draughts())}
 	if c.solved, err = c.solve(near); err != nil {
 		failure = &NoSolution{c.Condition, err}
 		c.Notes = append(c.Notes, "no solution: "+err.Error())
@@ -194,6 +245,13 @@ func checkedCondition(j *job.Job, limits *limits, name string, near *curves.Solv
 	}
 	c.Findings = limits.judge(&c, err)
 	return c, nil, failure
+}
+
+// judges says whether the answer holds a finding of a limit.
+func (a *Check) judges(limit string) bool {
+	return slices.ContainsFunc(a.Conditions, func(c Condition) bool {
+		return slices.ContainsFunc(c.Findings, func(f Finding) bool { return f.Limit == limit })
+	})
 }
 
 // Supplied is a figure that the program has put in where the tables left it open.
@@ -229,6 +287,7 @@ func (c *Condition) report(j *job.Job) {
 		p := Pump{Pump: u.Name, Running: d.Running, Flow: Figure(d.Flow * 3600), Head: Figure(d.Head), Efficiency: Figure(d.Efficiency),
 			ShaftPower: Figure(d.ShaftPower / 1e3), NPSHAvailable: Figure(d.NPSHAvailable), NPSHRequired: Figure(d.NPSHRequired),
 			NPSHMargin: Figure(d.NPSHMargin), BestShare: Figure(d.BestShare), Extrapolated: d.Extrapolated && d.Running, HeldShut: d.HeldShut}
+		c.drive(&p, u, d)
 		if p.Extrapolated {
 			sound = false
 			c.Notes = append(c.Notes, beyondCurve(s, i))
@@ -334,8 +393,10 @@ func (c *Condition) crossings(pump int) (list []Crossing) {
 func (c *Condition) withhold() {
 	for i, p := range c.Pumps {
 		if p.Running {
-			c.Pumps[i] = Pump{Pump: p.Pump, Running: true, Extrapolated: p.Extrapolated, Flow: unknown, Head: unknown, Efficiency: unknown,
-				ShaftPower: unknown, NPSHAvailable: unknown, NPSHRequired: unknown, NPSHMargin: unknown, BestShare: unknown}
+			p.Flow, p.Head, p.Efficiency, p.ShaftPower, p.BestShare = unknown, unknown, unknown, unknown, unknown
+			p.NPSHAvailable, p.NPSHRequired, p.NPSHRequiredHigh, p.NPSHMargin = unknown, unknown, unknown, unknown
+			p.MotorLoad, p.MotorCurrent, p.HeldShut, p.Crossings = unknown, unknown, false, nil
+			c.Pumps[i] = p
 		}
 	}
 	for i, r := range c.Runs {

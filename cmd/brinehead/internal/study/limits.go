@@ -9,6 +9,7 @@ import (
 	"brinehead/cmd/brinehead/internal/job"
 	"brinehead/curves"
 	"brinehead/hydraulics"
+	"brinehead/pumps"
 )
 
 // Verdict is the outcome of judging a limit.
@@ -51,39 +52,50 @@ type limitKind struct {
 	scale float64 // unit of findings over the SI unit of the table
 	least bool
 	still bool     // judged from the condition alone, without a solution
-	on    []string // pumps, runs, points, seas, tags; what * stands for is the first
+	on    []string // pumps, runs, points, seas, tags; what * stands for is the first, by default it may be all
 	value func(c *Condition, kind string, index int) (value Figure, why string)
+
+	evenShut bool // a shut run is judged too
 }
 
 // limitKinds is the list of every limit that can be judged.
 var limitKinds = []limitKind{
-	{"minimum flow", "m3/h", 3600, true, false, []string{"pumps", "runs", "tags"}, flowOf},
-	{"maximum flow", "m3/h", 3600, false, false, []string{"pumps", "runs", "tags"}, flowOf},
+	{"minimum flow", "m3/h", 3600, true, false, []string{"pumps", "runs", "tags"}, flowOf, false},
+	{"maximum flow", "m3/h", 3600, false, false, []string{"pumps", "runs", "tags"}, flowOf, false},
 	{"NPSH margin", "m", 1, true, false, []string{"pumps"}, func(c *Condition, _ string, i int) (Figure, string) {
 		return c.Pumps[i].NPSHMargin, noNPSH(c, i)
-	}},
+	}, false},
 	{"NPSH ratio", "-", 1, true, false, []string{"pumps"}, func(c *Condition, _ string, i int) (Figure, string) {
 		return c.Pumps[i].NPSHAvailable / c.Pumps[i].NPSHRequired, noNPSH(c, i)
-	}},
-	{"maximum velocity", "m/s", 1, false, false, []string{"runs"}, velocityOf},
-	{"minimum velocity", "m/s", 1, true, false, []string{"runs"}, velocityOf},
+	}, false},
+	{"maximum velocity", "m/s", 1, false, false, []string{"runs"}, velocityOf, false},
+	{"minimum velocity", "m/s", 1, true, false, []string{"runs"}, velocityOf, false},
 	{"maximum shaft power", "kW", 1e-3, false, false, []string{"pumps"}, func(c *Condition, _ string, i int) (Figure, string) {
 		return c.Pumps[i].ShaftPower, "the pump sheet gives neither efficiency nor power at this flow"
-	}},
-	{"least share of best-efficiency flow", "%", 100, true, false, []string{"pumps"}, shareOf},
-	{"greatest share of best-efficiency flow", "%", 100, false, false, []string{"pumps"}, shareOf},
+	}, false},
+	{"least share of best-efficiency flow", "%", 100, true, false, []string{"pumps"}, shareOf, false},
+	{"greatest share of best-efficiency flow", "%", 100, false, false, []string{"pumps"}, shareOf, false},
+	{"least allowable share of best-efficiency flow", "%", 100, true, false, []string{"pumps"}, shareOf, false},
+	{"greatest allowable share of best-efficiency flow", "%", 100, false, false, []string{"pumps"}, shareOf, false},
+	{"maximum shaft power along the curve", "kW", 1e-3, false, false, []string{"pumps"}, func(c *Condition, _ string, i int) (Figure, string) {
+		return c.Pumps[i].GreatestPower, "the pump sheet gives neither efficiency nor power"
+	}, false},
+	{"least motor reserve", "%", 100, true, false, []string{"pumps"}, func(c *Condition, _ string, i int) (Figure, string) {
+		return 100 / c.Pumps[i].MotorLoad, "the shaft power or the motor's rating is not known"
+	}, false},
+	{"maximum shut-off pressure", "bar", 1e-5, false, false, []string{"runs", "tags", "pumps"}, shutOffPressure, true},
 	{"minimum pressure", "bar", 1e-5, true, false, []string{"points"}, func(c *Condition, _ string, i int) (Figure, string) {
 		return c.Points[i].GaugePressure, "the point is cut off by shut runs"
-	}},
+	}, false},
 	{"minimum absolute pressure", "bar", 1e-5, true, false, []string{"runs"}, func(c *Condition, _ string, i int) (Figure, string) {
 		return c.Runs[i].LowestPressure, "a point of the run is cut off by shut runs"
-	}},
+	}, false},
 	{"minimum immersion", "m", 1, true, true, []string{"seas"}, func(c *Condition, _ string, i int) (Figure, string) {
 		return c.Draught - Figure(c.built.Elevations[i]), "the condition gives no draught"
-	}},
+	}, false},
 	{"maximum outlet temperature", "degC", 1, false, false, []string{"tags"}, func(c *Condition, _ string, i int) (Figure, string) {
 		return c.Fittings[i].Outlet, "no heat [kW] is given for it, or no water flows"
-	}},
+	}, false},
 }
 
 // flowOf returns a pump's flow, or how much runs through a run or through that of a fitting, whichever way.
@@ -122,19 +134,23 @@ func noNPSH(c *Condition, i int) string {
 const (
 	practice        = "common practice"
 	defaultVelocity = 3.0 // m/s
-	leastShare      = 70.0
-	greatestShare   = 120.0
 )
 
 var defaultSources = map[string]string{
-	"NPSH margin":                            practice + ": 0.6 m from 70 to 120 % of best-efficiency flow, 1.0 m outside (after ANSI/HI 9.6.1-2012, from a summary)",
-	"NPSH ratio":                             practice + ": 1.1 from 70 to 120 % of best-efficiency flow, 1.2 outside (after ANSI/HI 9.6.1-2012, from a summary)",
+	"NPSH margin":                            practice + ": 0.6 m in the preferred region, 1.0 m outside it or from suction specific speed 145 (after ANSI/HI 9.6.1-2012, from a summary)",
+	"NPSH ratio":                             practice + ": 1.1 in the preferred region, 1.2 outside it or from suction specific speed 145 (after ANSI/HI 9.6.1-2012, from a summary)",
 	"maximum velocity":                       practice + ": what the run's material bears in sea water by the catalogue, or 3.0 m/s (an engine maker's project guide)",
 	"minimum velocity":                       practice + ": what the run's material needs in sea water by the catalogue, where that says",
-	"least share of best-efficiency flow":    practice + ": 70 %, preferred region (after ANSI/HI 9.6.3-2012, from an article)",
+	"least share of best-efficiency flow":    practice + ": 70 %, or 80 % from specific speed 87, preferred region (after ANSI/HI 9.6.3-2012, from an article)",
 	"greatest share of best-efficiency flow": practice + ": 120 %, preferred region (after ANSI/HI 9.6.3-2012, from an article)",
 	"minimum absolute pressure":              practice + ": 0.3 bar absolute in a run that gives a high point: below it air and vapour gather there",
 	"maximum shaft power":                    "the motor's rating in pumps.csv",
+
+	"least allowable share of best-efficiency flow":    practice + ": 50 %, allowable region where the maker is silent (from memory)",
+	"greatest allowable share of best-efficiency flow": practice + ": 125 %, allowable region where the maker is silent (from memory)",
+	"maximum shaft power along the curve":              "the motor's rating in pumps.csv: a motor must carry its pump anywhere on its curve (" + practice + ")",
+	"least motor reserve":                              "ISO 5199, figure of motor margins: rating over shaft power 135 % at 1 kW, 120 % at 10 kW, 110 % from 100 kW (from memory, verify)",
+	"maximum shut-off pressure":                        "the design pressures in runs.csv, fittings.csv and pumps.csv",
 }
 
 // limits are the limits of a job, its own and the defaults.
@@ -200,7 +216,7 @@ func (k limitKind) judge(c *Condition, lim limit, failure error) []Finding {
 				findings = append(findings, f)
 			}
 		}
-		if lim.on == "*" {
+		if lim.on == "*" && !lim.byDefault {
 			break // all of the first kind
 		}
 	}
@@ -249,7 +265,7 @@ func (k limitKind) finding(c *Condition, lim limit, kind string, i int, failure 
 		f.Reason = "the pump does not run in this condition"
 		return f, asked
 	}
-	if kind == "runs" && k.unit != "m3/h" && plant.Network.Runs[i].Shut {
+	if kind == "runs" && k.unit != "m3/h" && plant.Network.Runs[i].Shut && !k.evenShut {
 		f.Reason = "the run is shut in this condition"
 		return f, asked
 	}
@@ -258,7 +274,7 @@ func (k limitKind) finding(c *Condition, lim limit, kind string, i int, failure 
 		return f, false // a standby branch or a balanced cross-connection has no velocity to keep
 	}
 	if lim.byDefault {
-		lim.value, f.Source = k.defaultValue(c, i, failure)
+		lim.value, f.Source = k.defaultValue(c, kind, i, failure)
 		if f.LimitValue = Figure(lim.value); !f.LimitValue.Known() {
 			return f, false // no motor rating: nothing to hold the power against
 		}
@@ -283,7 +299,32 @@ func (k limitKind) finding(c *Condition, lim limit, kind string, i int, failure 
 		f.Verdict = NotMet
 	}
 	f.Reason = f.Worded(float64(value), lim.value, k.unit)
+	if f.Verdict == Met {
+		c.doubtNPSH(&f, i)
+	}
 	return f, true
+}
+
+// doubtNPSH takes back the verdict on an NPSH margin or ratio that holds with affinity alone, and would not with the highest NPSH
+// required that the pump's speed may bring.
+func (c *Condition) doubtNPSH(f *Finding, i int) {
+	var value Figure
+	p := Pump{}
+	if i < len(c.Pumps) {
+		p = c.Pumps[i]
+	}
+	switch f.Limit {
+	case "NPSH margin":
+		value = p.NPSHAvailable - p.NPSHRequiredHigh
+	case "NPSH ratio":
+		value = p.NPSHAvailable / p.NPSHRequiredHigh
+	default:
+		return
+	}
+	if value < f.LimitValue {
+		f.Verdict = NotJudged
+		f.Reason += fmt.Sprintf(" by affinity; but with the NPSH required at this speed as high as it may be, %s (power 1.3 of the speed: ISO 9906, from memory), it is %s", short(float64(p.NPSHRequiredHigh), 3)+" m", short(float64(value), 3))
+	}
 }
 
 // Worded says a judged finding in words, its value and its limit given in a unit of the caller's choice.
@@ -315,7 +356,7 @@ func (f Finding) Origin() string {
 
 // defaultValue returns the default of a limit for a pump or a run, in the unit of findings, and its source; NaN where
 // there is none.
-func (k limitKind) defaultValue(c *Condition, i int, failure error) (value float64, source string) {
+func (k limitKind) defaultValue(c *Condition, kind string, i int, failure error) (value float64, source string) {
 	source = defaultSources[k.name]
 	switch k.name {
 	case "maximum velocity":
@@ -331,27 +372,35 @@ func (k limitKind) defaultValue(c *Condition, i int, failure error) (value float
 	case "minimum velocity":
 		b := c.built.Walls[i].Least
 		return b.Velocity, boundSource(c.built.Walls[i].Material, b)
-	case "least share of best-efficiency flow":
-		return leastShare, source
-	case "greatest share of best-efficiency flow":
-		return greatestShare, source
-	case "maximum shaft power":
-		return c.built.Pumps[i].Motor / 1e3, source
+	case "maximum shaft power", "maximum shaft power along the curve":
+		return c.built.Pumps[i].Motor.Rating / 1e3, source
+	case "least motor reserve":
+		if failure != nil || !c.Pumps[i].ShaftPower.Known() || math.IsNaN(c.built.Pumps[i].Motor.Rating) {
+			return math.NaN(), source // nothing to hold against each other; the maximum shaft power says so
+		}
+		return 100 * pumps.MotorMargin(float64(c.Pumps[i].ShaftPower)*1e3), source
+	case "maximum shut-off pressure":
+		design := map[string][]float64{"runs": c.built.Design.Runs, "tags": c.built.Design.Fittings, "pumps": c.built.Design.Pumps}[kind]
+		return design[i] / 1e5, designSource(kind)
 	}
-	preferred := false // an unknown share counts as outside: the stricter rule
+	return k.pumpDefault(c, i, failure), source
+}
+
+// pumpDefault returns the default of a limit that goes by the kind of pump.
+func (k limitKind) pumpDefault(c *Condition, i int, failure error) float64 {
+	numbers := c.built.Pumps[i].Curve.Numbers()
+	preferred, allowable := pumps.PreferredRegion(numbers.SpecificSpeed), pumps.AllowableRegion()
+	inside := false // an unknown share counts as outside: the stricter rule
 	if failure == nil {
-		share := 100 * float64(c.Pumps[i].BestShare)
-		preferred = leastShare <= share && share <= greatestShare
+		share := float64(c.Pumps[i].BestShare)
+		inside = preferred.From <= share && share <= preferred.To
 	}
-	switch {
-	case k.name == "NPSH margin" && preferred:
-		return 0.6, source
-	case k.name == "NPSH margin":
-		return 1.0, source
-	case preferred:
-		return 1.1, source
-	}
-	return 1.2, source
+	ratio, metres := pumps.NPSHRule(inside, numbers.SuctionSpecificSpeed)
+	return map[string]float64{
+		"least share of best-efficiency flow": 100 * preferred.From, "greatest share of best-efficiency flow": 100 * preferred.To,
+		"least allowable share of best-efficiency flow": 100 * allowable.From, "greatest allowable share of best-efficiency flow": 100 * allowable.To,
+		"NPSH margin": metres, "NPSH ratio": ratio,
+	}[k.name]
 }
 
 // boundSource says where a velocity that a material bears comes from.

@@ -1,0 +1,100 @@
+package report
+
+import (
+	"bytes"
+	"fmt"
+	"io"
+	"math"
+
+	"brinehead/cmd/brinehead/internal/study"
+	"brinehead/curves/plots"
+)
+
+// PumpFiles makes the table and plots of the sheets: pump.csv and, for each, its family of curves and its power.
+func PumpFiles(a *study.PumpSheets, u Units) ([]File, error) {
+	var table bytes.Buffer
+	if err := WritePumpCSV(&table, a, u); err != nil {
+		return nil, err
+	}
+	files := []File{{"pump.csv", table.Bytes()}}
+	taken := map[string]bool{}
+	for i := range a.Sheets {
+		s := &a.Sheets[i]
+		stem := fileStem(s.Pumps, taken)
+		p := s.Picture(float64(a.Density))
+		family, power := familyChart(a, p, u), powerChart(a, p, u)
+		drawn, err := draw(stem+"-curve", family.Write)
+		if err != nil {
+			return nil, err
+		}
+		files = append(files, drawn...)
+		if s.Power.Greatest.Known() {
+			if drawn, err = draw(stem+"-power", power.Write); err != nil {
+				return nil, err
+			}
+			files = append(files, drawn...)
+		}
+	}
+	return files, nil
+}
+
+// draw writes a plot in every format.
+func draw(stem string, write func(w io.Writer, format plots.Format, size plots.Size) error) ([]File, error) {
+	var files []File
+	for _, format := range []plots.Format{plots.SVG, plots.PNG} {
+		var b bytes.Buffer
+		if err := write(&b, format, plots.Size{}); err != nil {
+			return nil, fmt.Errorf("%s: %w", stem, err)
+		}
+		files = append(files, File{stem + "." + string(format), b.Bytes()})
+	}
+	return files, nil
+}
+
+func traceLine(t study.Trace) plots.Line { return line(t.Name, t.Flow, t.Value) }
+
+func familyChart(a *study.PumpSheets, p study.SheetPicture, u Units) plots.FamilyChart {
+	c := plots.FamilyChart{Title: fmt.Sprintf("%s: %s", a.Job, p.Title), Units: plotUnits(u),
+		Subtitle: "digitised curves, band of grade " + p.Grade + ", preferred and allowable region",
+		Own:      plots.PumpLine{Line: traceLine(p.Own), Beyond: []plots.Line{traceLine(p.Beyond)}},
+		Band:     plots.Band{Name: "grade " + p.Grade, Low: traceLine(p.Low), High: traceLine(p.High)}}
+	for _, f := range p.Family {
+		c.Family = append(c.Family, traceLine(f))
+	}
+	for _, d := range p.Points {
+		c.Digitised = append(c.Digitised, traceLine(d))
+	}
+	for _, l := range p.Levels {
+		c.Levels = append(c.Levels, line(l.Name, l.Trace.Flow, l.Trace.Value))
+	}
+	for _, b := range p.Bounds {
+		c.Bounds = append(c.Bounds, plots.Bound{Name: b.Name, Flow: b.Flow, Least: b.Least})
+	}
+	return c
+}
+
+func powerChart(a *study.PumpSheets, p study.SheetPicture, u Units) plots.PowerChart {
+	units := plotUnits(u)
+	units.HeadName, units.HeadFactor = "kW", 1e-3
+	if u == US {
+		units.HeadName, units.HeadFactor = usCustomary["kW"].name, usCustomary["kW"].factor*1e-3
+	}
+	c := plots.PowerChart{Title: fmt.Sprintf("%s: %s", a.Job, p.Title), Subtitle: fmt.Sprintf("shaft power in water of %.1f kg/m3", float64(a.Density)), Units: units,
+		Power: []plots.Line{traceLine(p.Power)}, Motor: p.Motor}
+	if !math.IsNaN(p.Greatest.Flow) {
+		c.Marks = []plots.Mark{{Label: fmt.Sprintf("greatest %s %s", u.Text(study.Figure(p.Greatest.Power/1e3), "kW", 1), u.Unit("kW")), Flow: p.Greatest.Flow, Value: p.Greatest.Power}}
+	}
+	for _, b := range p.Bounds {
+		c.Bounds = append(c.Bounds, plots.Bound{Name: b.Name, Flow: b.Flow, Least: b.Least})
+	}
+	return c
+}
+
+// plotUnits returns the units of the axes of flow and head.
+func plotUnits(u Units) plots.Units {
+	if u != US {
+		return plots.Units{}
+	}
+	flow, head := usCustomary["m3/h"], usCustomary["m"]
+	return plots.Units{FlowName: flow.name, FlowFactor: 3600 * flow.factor, HeadName: head.name, HeadFactor: head.factor}
+}

@@ -92,15 +92,15 @@ func (f *Fit) LeaveOneOut() float64 {
 // Shaped says whether the curve has the shape it was asked for; no smoothing of points that do not have it may.
 func (f *Fit) Shaped() bool { return f.shaped }
 
-// Method says in words what curve was chosen.
+// Method says in a word what curve was chosen: the smoothing spline, the parabola or the line of least squares.
 func (f *Fit) Method() string {
 	switch p := f.pieces[0]; {
 	case len(f.pieces) > 1:
-		return "smoothing spline"
+		return "spline"
 	case p[2] == 0:
-		return "straight line"
+		return "line"
 	}
-	return "parabola of least squares"
+	return "parabola"
 }
 
 // Within says whether x lies in the range of the points; the range counts as closed.

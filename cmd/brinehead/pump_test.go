@@ -50,6 +50,11 @@ func TestPumpOfTheDemo(t *testing.T) {
 			t.Errorf("%+v", row)
 		}
 	}
+	for _, args := range [][]string{{freshwater}, {freshwater, "--change", filepath.Join(changes, "smaller-impeller"), "--units", "us"}} {
+		if _, out, _ := brinehead(append([]string{"pump"}, args...)...); widest(out) > 80 {
+			t.Errorf("%d wide\n%s", widest(out), out)
+		}
+	}
 	code, out, _ := brinehead("pump", seawater)
 	if code != exitMet || widest(out) > 80 || !strings.Contains(out, "type number K 0.872 (ISO 17769)") || !strings.Contains(out, "from memory, source still to be opened") {
 		t.Errorf("exit code %d, %d wide\n%s", code, widest(out), out)

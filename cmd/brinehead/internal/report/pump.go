@@ -56,8 +56,8 @@ func sheetLines(s *study.PumpSheet, a *study.PumpSheets, u Units) []string {
 	for _, r := range s.Regions {
 		lines = append(lines, wrap("  ", "    ", fmt.Sprintf("%s region %s to %s %s [%s]", r.Name, u.Text(r.From, "m3/h", 0), u.Text(r.To, "m3/h", 0), u.Unit("m3/h"), r.Source))...)
 	}
-	lines = append(lines, "", "  How the sheet was fitted (each quantity over its own flows)")
-	fits := grid{left: 1, head: []string{"quantity", "points", "from " + u.Unit("m3/h"), "to", "curve", "residual", "left out"}}
+	lines = append(append(lines, ""), wrap("  ", "    ", fmt.Sprintf("How the sheet was fitted, each quantity over its own flows (%s): a smoothing spline or the parabola, whichever leaves single points out best", u.Unit("m3/h")))...)
+	fits := grid{left: 1, head: []string{"quantity", "points", "from", "to", "curve", "residual", "left out"}}
 	for _, f := range s.Fits {
 		unit := u.Unit(f.Unit)
 		fits.rows = append(fits.rows, []string{f.Quantity, fmt.Sprint(f.Points), u.Text(f.Low, "m3/h", 0), u.Text(f.High, "m3/h", 0), f.Method,
@@ -76,7 +76,7 @@ func sheetLines(s *study.PumpSheet, a *study.PumpSheets, u Units) []string {
 	lines = append(lines, points.lines("    ")...)
 	lines = append(lines, wrap("    ", "      ", "["+s.Grade.Source+"]")...)
 	if len(s.Trims) > 0 {
-		lines = append(append(lines, ""), wrap("  ", "    ", "Best-efficiency point after a cut, by each method of trim: the spread is the width of the answer")...)
+		lines = append(append(lines, ""), wrap("  ", "    ", fmt.Sprintf("Best-efficiency point (%s, %s) after a cut, by each method of trim: the spread is the width of the answer", u.Unit("m3/h"), u.Unit("m")))...)
 		trims := grid{head: []string{"cut %", "mm"}}
 		for _, m := range s.Trims[0].Methods {
 			trims.head = append(trims.head, m.Method)
@@ -84,9 +84,12 @@ func sheetLines(s *study.PumpSheet, a *study.PumpSheets, u Units) []string {
 		for _, t := range s.Trims {
 			row := []string{u.Text(100*t.Cut, "", 1), u.Text(t.Diameter, "", 1)}
 			for _, p := range t.Methods {
-				cell := "refused"
+				cell := "-"
+				if t.Refused {
+					cell = "refused"
+				}
 				if p.Flow.Known() {
-					cell = u.Text(p.Flow, "m3/h", 0) + " " + u.Unit("m3/h") + ", " + u.Text(p.Head, "m", 1) + " " + u.Unit("m")
+					cell = u.Text(p.Flow, "m3/h", 0) + ", " + u.Text(p.Head, "m", 1)
 				}
 				row = append(row, cell)
 			}

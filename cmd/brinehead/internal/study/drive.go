@@ -129,8 +129,11 @@ func (c *Condition) trimNotes() (notes []string) {
 	return notes
 }
 
-// weigh sets a finding beside those of the other methods of trim.
+// weigh sets a finding beside those of the other methods of trim. One that could not be judged stays so, for its own reason.
 func (f *Finding) weigh(all map[pumps.TrimMethod]*Condition) {
+	if f.Verdict == NotJudged {
+		return
+	}
 	var words []string
 	agree := true
 	for _, m := range pumps.TrimMethods() {

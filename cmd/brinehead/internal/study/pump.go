@@ -354,8 +354,28 @@ func (s *PumpSheet) trims(row job.PumpRow, trimmed job.Trim) {
 			}
 			t.Methods = append(t.Methods, p)
 		}
+		if len(s.family) > 1 {
+			t.Methods = append(t.Methods, s.neighbours(c.Impeller*(1-cut)))
+		}
 		s.Trims = append(s.Trims, t)
 	}
+}
+
+// neighbours returns where best efficiency goes by the digitised diameters on either side of one; no figure beyond them.
+func (s *PumpSheet) neighbours(diameter float64) TrimPoint {
+	p := TrimPoint{Method: "digitised", Flow: unknown, Head: unknown}
+	for k := 1; k < len(s.family); k++ {
+		c, err := pumps.Between(s.family[k-1], s.family[k], diameter)
+		if err != nil {
+			continue
+		}
+		n, r := c.Numbers(), 1.0
+		if s.pump.Speed > 0 && c.Speed > 0 {
+			r = s.pump.Speed / c.Speed
+		}
+		p.Flow, p.Head = Figure(n.BestFlow*r*3600), Figure(n.BestHead*r*r)
+	}
+	return p
 }
 
 // SheetNotes says what is odd about the digitised curves of a job, those that its pumps name, each once.

@@ -87,6 +87,7 @@ type bracket struct {
 // keep clear of.
 type figure struct {
 	title, subtitle, quantity string
+	across                    string // what the lower axis shows; empty for flow
 	units                     Units
 	bands                     []stroke // filled outlines
 	strokes                   []stroke
@@ -199,6 +200,22 @@ func (f *figure) margin(flow, low, high float64) {
 
 func finite(x float64) bool { return !math.IsNaN(x) && !math.IsInf(x, 0) }
 
+// lowest returns the least value there is to show, 0 at the most.
+func (f *figure) lowest() float64 {
+	low := 0.0
+	for _, s := range f.strokes {
+		for _, p := range s.points {
+			if finite(p.X) && finite(p.Y) {
+				low = math.Min(low, p.Y)
+			}
+		}
+	}
+	for _, m := range f.marks {
+		low = math.Min(low, m.Value)
+	}
+	return low
+}
+
 // extent returns the greatest flow and value there is to show, a little more than 1 at least.
 func (f *figure) extent() (x, y float64) {
 	for _, s := range f.strokes {
@@ -223,21 +240,22 @@ func (f *figure) extent() (x, y float64) {
 	return x, y
 }
 
-// steps are ticks at round numbers from 0, some six to ten of them.
-func steps(most float64) (ticks plot.ConstantTicks, top float64) {
-	step := math.Pow(10, math.Floor(math.Log10(most/6)))
+// steps are ticks at round numbers from below low (0 or less) to above most, some six to ten of them.
+func steps(low, most float64) (ticks plot.ConstantTicks, bottom, top float64) {
+	span := most - low
+	step := math.Pow(10, math.Floor(math.Log10(span/6)))
 	for _, f := range []float64{1, 2, 5, 10} {
-		if most/(f*step) <= 9 {
+		if span/(f*step) <= 9 {
 			step *= f
 			break
 		}
 	}
 	decimals := max(0, int(math.Ceil(-math.Log10(step)-1e-9)))
-	count := int(math.Ceil(most/step - 1e-9))
-	for i := range count + 1 {
+	first, last := int(math.Floor(low/step+1e-9)), int(math.Ceil(most/step-1e-9))
+	for i := first; i <= last; i++ {
 		ticks = append(ticks, plot.Tick{Value: float64(i) * step, Label: fmt.Sprintf("%.*f", decimals, float64(i)*step)})
 	}
-	return ticks, float64(count) * step
+	return ticks, float64(first) * step, float64(last) * step
 }
 
 // write draws the figure.
@@ -302,11 +320,13 @@ func (f *figure) plot() *plot.Plot {
 	p := plot.New()
 	x, y := f.extent()
 	var xTicks, yTicks plot.ConstantTicks
-	p.X.Min, p.Y.Min = 0, 0
-	xTicks, p.X.Max = steps(x)
-	yTicks, p.Y.Max = steps(y * 1.04)
+	xTicks, p.X.Min, p.X.Max = steps(0, x)
+	yTicks, p.Y.Min, p.Y.Max = steps(f.lowest(), y*1.04)
 	p.X.Tick.Marker, p.Y.Tick.Marker = xTicks, yTicks
 	p.X.Label.Text = "flow [" + f.units.FlowName + "]"
+	if f.across != "" {
+		p.X.Label.Text = f.across + " [" + f.units.FlowName + "]"
+	}
 	p.Y.Label.Text = f.quantity + " [" + f.units.HeadName + "]"
 	for _, a := range []*plot.Axis{&p.X, &p.Y} {
 		a.Label.TextStyle.Font, a.Label.TextStyle.Color = writing(10).Font, inkColour

@@ -219,10 +219,13 @@ func TestOddData(t *testing.T) {
 
 func TestSteps(t *testing.T) {
 	for most, want := range map[float64][2]float64{630: {700, 8}, 35: {35, 8}, 0.07: {0.07, 8}, 9: {9, 10}, 1: {1, 6}} {
-		ticks, top := steps(most)
-		if !(math.Abs(top-want[0]) < 1e-9) || len(ticks) != int(want[1]) || ticks[0].Label[0] != '0' {
+		ticks, bottom, top := steps(0, most)
+		if !(math.Abs(top-want[0]) < 1e-9) || bottom != 0 || len(ticks) != int(want[1]) || ticks[0].Label[0] != '0' {
 			t.Errorf("%g: %d ticks to %g, want %g to %g", most, len(ticks), top, want[1], want[0])
 		}
+	}
+	if ticks, bottom, top := steps(-3.2, 11); bottom != -4 || top != 12 || ticks[0].Label != "-4" {
+		t.Errorf("from -3.2 to 11: %g to %g, first %q", bottom, top, ticks[0].Label)
 	}
 }
 

@@ -59,6 +59,8 @@ var tables = []table{
 		text("straight"),
 		word("siphon", "yes", "no"),
 		number("tee angle", angle, between(0, math.Pi)),
+		number("off centre", length, between(-50, 50)),
+		number("aft of mark", length, between(-400, 400)),
 		text("note"),
 	}},
 	{name: runsTable, required: true, key: "run", columns: []column{
@@ -118,6 +120,7 @@ var tables = []table{
 		number("motor efficiency", share, between(0.2, 1)),
 		number("power factor", plain, between(0.1, 1)),
 		number("design pressure", pressure, above(0, 1e8)),
+		number("suction gauge elevation", length, between(-100, 200)),
 		text("note"),
 	}},
 	{name: curvesTable, required: true, key: "curve", columns: []column{

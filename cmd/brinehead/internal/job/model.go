@@ -184,6 +184,20 @@ type Design struct {
 	Runs, Fittings, Pumps []float64 // by run, by fitting of one run after the other, by pump
 }
 
+// Clone returns a case whose network can be changed without changing the first one's.
+func (c *Case) Clone() *Case {
+	out, plant := *c, *c.Plant
+	plant.Network.Points = slices.Clone(plant.Network.Points)
+	plant.Network.Runs = slices.Clone(plant.Network.Runs)
+	for k := range plant.Network.Runs {
+		plant.Network.Runs[k].Fittings = slices.Clone(plant.Network.Runs[k].Fittings)
+	}
+	plant.Network.Pumps = nil
+	plant.Pumps = slices.Clone(plant.Pumps)
+	out.Plant = &plant
+	return &out
+}
+
 // Supplied is a figure that comes from a catalogue or a default, not from the tables.
 type Supplied struct {
 	On     string // the run, or the tag or name of a fitting
@@ -206,10 +220,17 @@ func (j *Job) Build(name string, set ...Override) (*Case, error) {
 
 // BuildTrimmed is Build with a method of trim.
 func (j *Job) BuildTrimmed(name string, method pumps.TrimMethod, set ...Override) (*Case, error) {
+	return j.BuildVaried(name, method, func(*ConditionRow) {}, set...)
+}
+
+// BuildVaried is BuildTrimmed with a change to the condition's row, which it gets a copy of: another draught, temperature, pumps
+// running.
+func (j *Job) BuildVaried(name string, method pumps.TrimMethod, vary func(*ConditionRow), set ...Override) (*Case, error) {
 	row, err := j.condition(name)
 	if err != nil {
 		return nil, err
 	}
+	vary(&row)
 	row.Overrides = append(slices.Clone(row.Overrides), set...)
 	b := &builder{job: j, condition: row, trim: method, point: map[string]int{}, plant: &curves.Plant{}}
 	b.water()

@@ -68,6 +68,8 @@ type PointRow struct {
 	Draw      Number `csv:"draw"`
 	Straight  Text   `csv:"straight"`
 	TeeAngle  Number `csv:"tee angle"`
+	OffCentre Number `csv:"off centre"`
+	AftOfMark Number `csv:"aft of mark"`
 	Siphon    Text   `csv:"siphon"`
 	Note      Text   `csv:"note"`
 }
@@ -143,6 +145,7 @@ type PumpRow struct {
 	MotorEfficiency Number `csv:"motor efficiency"`
 	PowerFactor     Number `csv:"power factor"`
 	Design          Number `csv:"design pressure"`
+	SuctionGauge    Number `csv:"suction gauge elevation"`
 	Note            Text   `csv:"note"`
 }
 

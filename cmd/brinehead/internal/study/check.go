@@ -234,8 +234,15 @@ func conditionTrimmed(j *job.Job, limits *limits, name string, method pumps.Trim
 	if err != nil {
 		return c, err, nil
 	}
+	c, failure = judged(j, limits, built, near)
+	return c, nil, failure
+}
+
+// judged solves and judges a built case.
+func judged(j *job.Job, limits *limits, built *job.Case, near *curves.Solved) (c Condition, failure error) {
 	c = Condition{Condition: built.Row.Condition.Value, Water: waterOf(built.Plant), Draught: Figure(built.Row.Draught.Or(math.NaN())), built: built,
 		deepest: deepestDraught(j.Draughts())}
+	var err error
 	if c.solved, err = c.solve(near); err != nil {
 		failure = &NoSolution{c.Condition, err}
 		c.Notes = append(c.Notes, "no solution: "+err.Error())
@@ -244,7 +251,7 @@ func conditionTrimmed(j *job.Job, limits *limits, name string, method pumps.Trim
 		c.report(j)
 	}
 	c.Findings = limits.judge(&c, err)
-	return c, nil, failure
+	return c, failure
 }
 
 // judges says whether the answer holds a finding of a limit.

@@ -74,10 +74,7 @@ func (c *Condition) picture(i int) Picture {
 	end := 1.12 * high
 	p.Flow, p.Head = trace(low, high, func(q float64) float64 { h, _ := u.Head(q); return h })
 	p.BeyondFlow, p.BeyondHead = trace(high, end, func(q float64) float64 { h, _ := u.Head(q); return h })
-	n := 1.0
-	if u.Speed != 0 && u.Curve.Speed != 0 {
-		n = u.Speed / u.Curve.Speed
-	}
+	n := c.speedRatio(i)
 	for _, d := range u.Curve.Points {
 		p.DigitisedFlow = append(p.DigitisedFlow, d.Flow*n)
 		p.DigitisedHead = append(p.DigitisedHead, d.Head*n*n*(1-u.Wear))

@@ -279,10 +279,13 @@ func suctionRemarks(a *study.Suction, u Units) []string {
 		for _, ch := range c.Chests {
 			text := fmt.Sprintf("case %d: %s lies %s %s deep", i+1, ch.Chest, u.Text(ch.Upright, "m", 2), u.Unit("m"))
 			if ch.Inclined != ch.Upright {
-				text += fmt.Sprintf(", %s heeled and trimmed", u.Text(ch.Inclined, "m", 2))
+				text += fmt.Sprintf(", %s inclined", u.Text(ch.Inclined, "m", 2))
 			}
 			if ch.Wanted.Known() {
 				text += fmt.Sprintf("; %s wanted against an air-drawing vortex", u.Text(ch.Wanted, "m", 2))
+			}
+			if deep := min(ch.Upright, ch.Inclined); deep < ch.Wanted && deep > 0 {
+				text += ": LESS THAN WANTED"
 			}
 			if ch.Doubt != "" {
 				text += "; not judged inclined: " + ch.Doubt

@@ -51,16 +51,16 @@ var blockedLimits = []string{"NPSH margin", "NPSH ratio", "minimum flow", "minim
 func (c *SuctionCase) strainers(j *job.Job, s *Condition, o SuctionOptions, solve func(*job.Case) *Condition) (list []StrainerLimit) {
 	for _, p := range c.Pumps {
 		k := slices.IndexFunc(s.Pumps, func(q Pump) bool { return q.Pump == p.Pump })
-		for _, step := range suctionPath(s, s.solved.Plant.Pumps[k].From) {
-			for i, f := range s.solved.Network.Runs[step.run].Fittings {
-				if !strings.Contains(strings.ToLower(f.Name), "strainer") || slices.ContainsFunc(list, func(l StrainerLimit) bool { return l.run == step.run && l.fitting == i }) {
+		for _, run := range feeds(s, s.solved.Plant.Pumps[k].From) {
+			for i, f := range s.solved.Network.Runs[run].Fittings {
+				if !strings.Contains(strings.ToLower(f.Name), "strainer") || slices.ContainsFunc(list, func(l StrainerLimit) bool { return l.run == run && l.fitting == i }) {
 					continue
 				}
 				name := f.Tag
 				if name == "" {
-					name = f.Name
+					name = s.solved.Network.Runs[run].Name + " strainer"
 				}
-				l := StrainerLimit{Strainer: name, Run: s.solved.Network.Runs[step.run].Name, run: step.run, fitting: i}
+				l := StrainerLimit{Strainer: name, Run: s.solved.Network.Runs[run].Name, run: run, fitting: i}
 				c.strainer(j, s, o, solve, &l)
 				list = append(list, l)
 			}
@@ -206,7 +206,7 @@ func (l *StrainerLimit) state(j *job.Job, s *Condition, blockage float64) Strain
 	f := s.Fittings[k+l.fitting]
 	st.Drop, st.Loss = Figure(math.Abs(float64(f.Drop))), Figure(math.Abs(float64(f.Loss)))
 	for i, u := range s.solved.Plant.Pumps {
-		if u.Running && slices.ContainsFunc(suctionPath(s, u.From), func(p step) bool { return p.run == l.run }) {
+		if u.Running && slices.Contains(feeds(s, u.From), l.run) {
 			st.Pumps = append(st.Pumps, StrainerPumpLine{u.Name, s.Pumps[i].Flow, s.Pumps[i].NPSHMargin, suctionGauge(j, s, i)})
 		}
 	}

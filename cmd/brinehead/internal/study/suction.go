@@ -354,6 +354,35 @@ func suctionPath(s *Condition, point int) (path []step) {
 	return path
 }
 
+// feeds returns the runs through which any of the water that reaches a point comes, on every way, nearest first.
+func feeds(s *Condition, point int) (runs []int) {
+	n := s.solved.Network
+	points := []int{point}
+	for k := 0; k < len(points); k++ {
+		if n.Points[points[k]].Fixed {
+			continue
+		}
+		for i, r := range n.Runs {
+			const passes = 1e-9 // m3/s
+			from := -1
+			switch q := s.solved.RunFlows[i]; {
+			case r.To == points[k] && q > passes:
+				from = r.From
+			case r.From == points[k] && q < -passes:
+				from = r.To
+			}
+			if from < 0 || slices.Contains(runs, i) {
+				continue
+			}
+			runs = append(runs, i)
+			if !slices.Contains(points, from) {
+				points = append(points, from)
+			}
+		}
+	}
+	return runs
+}
+
 // npshLines takes a pump's NPSH available apart; the lines add up to it.
 func npshLines(s *Condition, pump int) []NPSHLine {
 	u := s.solved.Plant.Pumps[pump]

@@ -86,7 +86,7 @@ func (c *SuctionCase) picture(p PumpSuction) SuctionPicture {
 	}
 	available("present", func() *Condition { return s })
 	for _, l := range c.Strainers {
-		if !slices.ContainsFunc(suctionPath(s, u.From), func(p step) bool { return p.run == l.run }) {
+		if !slices.Contains(feeds(s, u.From), l.run) {
 			continue
 		}
 		at := func(blockage Figure) func() *Condition {

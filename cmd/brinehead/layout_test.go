@@ -355,11 +355,11 @@ func TestWarnings(t *testing.T) {
 	if got := notes(two, "both pumps"); !strings.Contains(got, "more than one tank holds the circuit") {
 		t.Errorf("%s", got)
 	}
-	cut := copyJob(t, freshwater, [3]string{"conditions.csv", "V30 opening [%]", "V30 opening [%],LO COOLER state,ENGINE RETURN state"}, [3]string{"conditions.csv", ",100\n", ",100,,\n"}, [3]string{"conditions.csv", ",50\n", ",50,,\n"})
+	cut := copyJob(t, freshwater, [3]string{"conditions.csv", "V30 opening [%]", "V30 opening [%],LO COOLER state,ENGINE RETURN state"}, [3]string{"conditions.csv", ",100,", ",100,,,"}, [3]string{"conditions.csv", ",50,", ",50,,,"})
 	if got := notes(cut, "tank low"); strings.Contains(got, "cut off") {
 		t.Errorf("%s", got)
 	}
-	cut = copyJob(t, cut, [3]string{"conditions.csv", ",100,,\n", ",100,shut,shut\n"}, [3]string{"runs.csv", "AIR COOLER,AIR COOLER IN,RETURN", "AIR COOLER,AIR COOLER IN,COOLER IN"})
+	cut = copyJob(t, cut, [3]string{"conditions.csv", ",100,,,", ",100,shut,shut,"}, [3]string{"runs.csv", "AIR COOLER,AIR COOLER IN,RETURN", "AIR COOLER,AIR COOLER IN,COOLER IN"})
 	if got := notes(cut, "tank low"); !strings.Contains(got, "RETURN is cut off by shut runs: its pressure is not known") {
 		t.Errorf("%s", got)
 	}

@@ -21,6 +21,8 @@ type FamilyChart struct {
 	Digitised       []Line // points
 	Band            Band
 	Levels          []Line // of one efficiency each, across the diameters; a single point is drawn as a tick
+	Systems         []Line // what the system asks
+	Duty            []Mark
 	Bounds          []Bound
 }
 
@@ -45,6 +47,10 @@ func (c FamilyChart) figure() *figure {
 	for _, l := range c.Levels {
 		f.level(l)
 	}
+	for _, s := range c.Systems {
+		f.line(s, asked, systemColour)
+	}
+	f.duty(c.Duty)
 	return f
 }
 

@@ -141,6 +141,7 @@ var tables = []table{
 		number("draught", length, between(0, 50)),
 		number("atmosphere", absolutePressure, between(5e4, 1.2e5)),
 		text("running"),
+		number("hours", plain, between(0, 8784)),
 	}},
 	{name: limitsTable, columns: []column{
 		word("limit", "minimum flow", "maximum flow", "NPSH margin", "NPSH ratio", "maximum velocity", "minimum velocity", "maximum shaft power",

@@ -28,4 +28,5 @@ func ExampleContract() {
 	// draught [m]: required false, words [], range "at least 0, at most 50"
 	// atmosphere [bar]: required false, words [], range "at least 0.5, at most 1.2"
 	// running: required false, words [], range ""
+	// hours: required false, words [], range "at least 0, at most 8784"
 }

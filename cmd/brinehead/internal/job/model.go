@@ -184,6 +184,17 @@ type Design struct {
 	Runs, Fittings, Pumps []float64 // by run, by fitting of one run after the other, by pump
 }
 
+// Openable returns the tags of the valves whose loss the catalogue knows at any opening.
+func (j *Job) Openable() (tags []string) {
+	for _, r := range j.Tables.Fittings {
+		entry := j.names.fittings[r.Fitting.Value].entry
+		if r.Tag.Given() && !r.K.Given && !r.Kv.Given && !r.RatedFlow.Given && slices.Contains(append(slices.Clone(entry.Needs), entry.Uses...), "opening") {
+			tags = append(tags, r.Tag.Value)
+		}
+	}
+	return tags
+}
+
 // Clone returns a case whose network can be changed without changing the first one's.
 func (c *Case) Clone() *Case {
 	out, plant := *c, *c.Plant

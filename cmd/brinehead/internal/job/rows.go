@@ -170,6 +170,7 @@ type ConditionRow struct {
 	Draught     Number `csv:"draught"`
 	Atmosphere  Number `csv:"atmosphere"`
 	Running     Text   `csv:"running"`
+	Hours       Number `csv:"hours"` // of a year
 
 	RunningList []Text     `csv:"-"` // the pumps named in Running
 	NoneRuns    bool       `csv:"-"` // Running says none

@@ -74,12 +74,7 @@ func familyChart(a *study.PumpSheets, p study.SheetPicture, u Units) plots.Famil
 }
 
 func powerChart(a *study.PumpSheets, p study.SheetPicture, u Units) plots.PowerChart {
-	units := plotUnits(u)
-	units.HeadName, units.HeadFactor = "kW", 1e-3
-	if u == US {
-		units.HeadName, units.HeadFactor = usCustomary["kW"].name, usCustomary["kW"].factor*1e-3
-	}
-	c := plots.PowerChart{Title: fmt.Sprintf("%s: %s", a.Job, p.Title), Subtitle: fmt.Sprintf("shaft power in water of %.1f kg/m3", float64(a.Density)), Units: units,
+	c := plots.PowerChart{Title: fmt.Sprintf("%s: %s", a.Job, p.Title), Subtitle: fmt.Sprintf("shaft power in water of %.1f kg/m3", float64(a.Density)), Units: powerUnits(u),
 		Power: []plots.Line{traceLine(p.Power)}, Motor: p.Motor}
 	if !math.IsNaN(p.Greatest.Flow) {
 		c.Marks = []plots.Mark{{Label: fmt.Sprintf("greatest %s %s", u.Text(study.Figure(p.Greatest.Power/1e3), "kW", 1), u.Unit("kW")), Flow: p.Greatest.Flow, Value: p.Greatest.Power}}
@@ -97,4 +92,14 @@ func plotUnits(u Units) plots.Units {
 	}
 	flow, head := usCustomary["m3/h"], usCustomary["m"]
 	return plots.Units{FlowName: flow.name, FlowFactor: 3600 * flow.factor, HeadName: head.name, HeadFactor: head.factor}
+}
+
+// powerUnits returns the units of the axes of flow and power.
+func powerUnits(u Units) plots.Units {
+	units := plotUnits(u)
+	units.HeadName, units.HeadFactor = "kW", 1e-3
+	if u == US {
+		units.HeadName, units.HeadFactor = usCustomary["kW"].name, usCustomary["kW"].factor*1e-3
+	}
+	return units
 }

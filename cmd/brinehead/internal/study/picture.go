@@ -6,6 +6,7 @@ import (
 	"strings"
 
 	"brinehead/curves"
+	"brinehead/pumps"
 )
 
 // Picture is what a plot of one pump, or of several that do the same, shows of a condition, in SI. Where a series ends
@@ -74,7 +75,7 @@ func (c *Condition) picture(i int) Picture {
 	end := 1.12 * high
 	p.Flow, p.Head = trace(low, high, func(q float64) float64 { h, _ := u.Head(q); return h })
 	p.BeyondFlow, p.BeyondHead = trace(high, end, func(q float64) float64 { h, _ := u.Head(q); return h })
-	n := c.speedRatio(i)
+	n := speedRatio(u.Pump)
 	for _, d := range u.Curve.Points {
 		p.DigitisedFlow = append(p.DigitisedFlow, d.Flow*n)
 		p.DigitisedHead = append(p.DigitisedHead, d.Head*n*n*(1-u.Wear))
@@ -100,6 +101,14 @@ func (c *Condition) picture(i int) Picture {
 	}
 	p.Bounds = c.bounds(u)
 	return p
+}
+
+// speedRatio returns the speed of a pump over that of its sheet, 1 where either is not known.
+func speedRatio(p pumps.Pump) float64 {
+	if p.Speed > 0 && p.Curve.Speed > 0 {
+		return p.Speed / p.Curve.Speed
+	}
+	return 1
 }
 
 // trace evaluates a function at even steps.

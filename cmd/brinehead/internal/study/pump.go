@@ -275,10 +275,7 @@ func sheetNotes(name string, c *pumps.Curve) (notes []string) {
 }
 
 func (s *PumpSheet) numbers() {
-	n, r := s.pump.Curve.Numbers(), 1.0
-	if s.pump.Speed > 0 && s.pump.Curve.Speed > 0 {
-		r = s.pump.Speed / s.pump.Curve.Speed
-	}
+	n, r := s.pump.Curve.Numbers(), speedRatio(s.pump.Pump)
 	s.Numbers = Numbers{Figure(n.BestFlow * r * 3600), Figure(n.BestHead * r * r), Figure(n.BestEfficiency), Figure(n.TypeNumber), Figure(n.SpecificSpeed),
 		Figure(pumps.SpecificSpeedUS(n.SpecificSpeed)), Figure(n.SuctionSpecificSpeed), Figure(pumps.SpecificSpeedUS(n.SuctionSpecificSpeed))}
 	if !s.Numbers.BestFlow.Known() {

@@ -64,7 +64,7 @@ func (c *SuctionCase) picture(p PumpSuction) SuctionPicture {
 		out.Required = traceOf("required", from, to, u.NPSHRequired)
 		out.Rule = traceOf("required and margin", from, to, func(q float64) float64 { return u.NPSHRequired(q) + margin })
 	}
-	n := s.speedRatio(i)
+	n := speedRatio(s.solved.Plant.Pumps[i].Pump)
 	for _, d := range u.Curve.Points {
 		out.Points.Flow, out.Points.Value = append(out.Points.Flow, d.Flow*n), append(out.Points.Value, d.NPSHRequired*n*n)
 	}
@@ -120,15 +120,6 @@ func (c *SuctionCase) picture(p PumpSuction) SuctionPicture {
 		out.Profile = s.profile(i)
 	}
 	return out
-}
-
-// speedRatio returns the speed of a pump over that of its sheet.
-func (c *Condition) speedRatio(i int) float64 {
-	u := c.solved.Plant.Pumps[i]
-	if u.Speed > 0 && u.Curve.Speed > 0 {
-		return u.Speed / u.Curve.Speed
-	}
-	return 1
 }
 
 // picture returns the margin of one pump over the blockage.

@@ -10,14 +10,15 @@ import (
 // Change is one difference between the tables of two jobs: a cell of a row that stands in both, or a whole row that stands
 // in one of them only.
 type Change struct {
-	File   string // as in "runs.csv"
-	Row    string // what the row is known by: the run, the tag, or "RUN: fitting" for a fitting without one
-	Kind   ChangeKind
-	Column string // of a cell, without its unit; empty for a whole row
+	File   string     `json:"table"` // as in "runs.csv"
+	Row    string     `json:"row"`   // what the row is known by: the run, the tag, or "RUN: fitting" for a fitting without one
+	Kind   ChangeKind `json:"kind"`
+	Column string     `json:"column"` // of a cell, without its unit; empty for a whole row
 
 	// Before and After are what is written there, with its unit; empty where nothing is. For a whole row they are all its
 	// cells.
-	Before, After string
+	Before string `json:"before"`
+	After  string `json:"after"`
 }
 
 // ChangeKind says what became of a row.

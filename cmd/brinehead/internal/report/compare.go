@@ -52,7 +52,7 @@ func compareSummary(a *study.Comparison) []string {
 	}
 	lines := []string{verdict}
 	was := fmt.Sprintf("Before it: %d not met, %d not judged, of %d.", before.NotMet, before.NotJudged, before.Met+before.NotMet+before.NotJudged)
-	became := fmt.Sprintf("%s lost, %s gained, %s met neither before nor after.", countedOrNone(a.Verdicts.Lost, "limit"), countedOrNone(a.Verdicts.Gained, ""), countedOrNone(a.Verdicts.Still, ""))
+	became := fmt.Sprintf("Lost: %d, gained: %d, met neither before nor after: %d.", a.Verdicts.Lost, a.Verdicts.Gained, a.Verdicts.Still)
 	lines = append(lines, wrap("", "  ", was+" "+became)...)
 	lines = append(lines, wrap("", "  ", fmt.Sprintf("%s with %s: %s compared.", a.Job, a.Change, counted(len(a.Conditions), "condition")))...)
 	if a.Same() {
@@ -72,19 +72,6 @@ func compareSummary(a *study.Comparison) []string {
 }
 
 func quotedList(names []string) string { return `"` + strings.Join(names, `", "`) + `"` }
-
-// countedOrNone is counted with "none" for 0, and without a noun where what is empty.
-func countedOrNone(n int, what string) string {
-	switch {
-	case n == 0 && what != "":
-		return "no " + what
-	case n == 0:
-		return "none"
-	case what == "":
-		return fmt.Sprint(n)
-	}
-	return counted(n, what)
-}
 
 // limitLines lists the limits that are not met or not judged after the change, with what they were before, and those gained.
 func limitLines(a *study.Comparison, u Units) []string {
@@ -198,7 +185,18 @@ func inputLines(a *study.Comparison) []string {
 			lines = append(lines, wrap("  ", "    ", fmt.Sprintf("%s: %s: %s -> %s", at, c.Column, orNotGiven(c.Before), orNotGiven(c.After)))...)
 		}
 	}
+	for _, s := range a.Supplied {
+		lines = append(lines, wrap("  ", "    ", fmt.Sprintf("so that %s of %s: %s -> %s [%s]", s.What, s.On, orNone(s.Before), orNone(s.After), s.Source))...)
+	}
 	return lines
+}
+
+// orNone is a supplied figure, or says that none is.
+func orNone(figure string) string {
+	if figure == "" {
+		return "none supplied"
+	}
+	return figure
 }
 
 func orNotGiven(text string) string {
@@ -354,7 +352,7 @@ func pathLines(p study.PathComparison, u Units) []string {
 		way = fmt.Sprintf("before from %s to %s, after from %s to %s", p.From.Before, p.To.Before, p.From.After, p.To.After)
 	}
 	lines := wrap("  ", "    ", fmt.Sprintf("Where the head of %s goes, %s:", p.Pump, way))
-	g := grid{left: 1, head: []string{"", u.Unit("m") + " before", "after", "change", "by itself", "by flow"}}
+	g := grid{left: 1, head: []string{"", "before " + u.Unit("m"), "after", "change", "itself", "flow"}}
 	run := ""
 	for _, e := range p.Elements {
 		if e.Run != run {
@@ -373,7 +371,7 @@ func pathLines(p study.PathComparison, u Units) []string {
 	g.rows = append(g.rows, []string{"static, end less beginning", u.Text(p.Static.Before, "m", 3), u.Text(p.Static.After, "m", 3), change(p.Static, "m", 3, u), "", ""},
 		[]string{"head of " + p.Pump + ", the sum of all", u.Text(p.Head.Before, "m", 3), u.Text(p.Head.After, "m", 3), change(p.Head, "m", 3, u), "", ""})
 	lines = append(lines, g.lines("  ")...)
-	return append(lines, wrap("  ", "    ", "By itself: at the flow as it was; by flow: since the flow is another. The two add up to the change; for tees they are not told apart.")...)
+	return append(lines, wrap("  ", "    ", "Itself: what the element brings at the flow as it was; flow: what comes of the other flow. The two add up to the change; for tees they are not told apart.")...)
 }
 
 func signed(f study.Figure, metric string, decimals int, u Units) string {

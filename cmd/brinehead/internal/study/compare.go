@@ -22,6 +22,7 @@ type Comparison struct {
 	Change     string                `json:"change"`
 	Version    string                `json:"version"`
 	Inputs     []job.Change          `json:"inputs"`
+	Supplied   []SuppliedComparison  `json:"supplied"` // what the catalogues and defaults supply otherwise
 	OnlyBefore []string              `json:"conditions_only_before"`
 	OnlyAfter  []string              `json:"conditions_only_after"`
 	Verdicts   VerdictCounts         `json:"verdicts"`
@@ -31,6 +32,16 @@ type Comparison struct {
 	Failed     []error               `json:"-"` // *NoSolution of the conditions that could not be solved, of either side
 
 	before, after *Check // nil where a side has none of the conditions asked for
+}
+
+// SuppliedComparison is a figure that the program puts in where the tables leave it open, and that is another after the
+// change. A side on which the tables give it, or have no use for it, is empty.
+type SuppliedComparison struct {
+	On     string `json:"on"`
+	What   string `json:"what"`
+	Before string `json:"before"`
+	After  string `json:"after"`
+	Source string `json:"source"` // of the later figure, or else of the earlier
 }
 
 // VerdictCounts counts the limits of all conditions of each side.
@@ -227,6 +238,9 @@ func Compared(before, after *job.Job, change string, o CompareOptions) (*Compari
 		}
 	}
 	a.pairConditions(names[0], names[1])
+	if a.before != nil && a.after != nil {
+		a.Supplied = suppliedCompared(a.before.Supplied, a.after.Supplied)
+	}
 	a.count()
 	a.Worst = a.worst()
 	a.Test, err = a.harbourTest(after, o.Test, grade)
@@ -252,6 +266,24 @@ func chosen(names, asked []string) (list []string) {
 	for _, n := range names {
 		if len(asked) == 0 || holds(asked, n) {
 			list = append(list, n)
+		}
+	}
+	return list
+}
+
+// suppliedCompared lists the supplied figures that are not the same on both sides.
+func suppliedCompared(before, after []Supplied) (list []SuppliedComparison) {
+	for _, p := range paired(before, after, func(s Supplied) string { return s.On + ": " + s.What }) {
+		at := p.either()
+		c := SuppliedComparison{On: at.On, What: at.What, Source: at.Source}
+		if p.before != nil {
+			c.Before = p.before.Figure
+		}
+		if p.after != nil {
+			c.After = p.after.Figure
+		}
+		if c.Before != c.After {
+			list = append(list, c)
 		}
 	}
 	return list
@@ -647,8 +679,10 @@ var worstKinds = []worstKind{
 		return list
 	}},
 	{"lowest gauge pressure", "bar", true, func(c *Condition) (list []onValue) {
-		for _, p := range c.Points {
-			list = append(list, onValue{p.Point, p.GaugePressure})
+		for i, p := range c.Points {
+			if !c.solved.Network.Points[i].Fixed { // the sea, an overboard and a tank are given, not found
+				list = append(list, onValue{p.Point, p.GaugePressure})
+			}
 		}
 		return list
 	}},

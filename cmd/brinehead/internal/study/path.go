@@ -2,9 +2,11 @@ package study
 
 import (
 	"math"
+	"slices"
 	"strings"
 
 	"brinehead/cmd/brinehead/internal/job"
+	"brinehead/fluids"
 )
 
 // PathComparison takes the head of one running pump apart along the way of its water, before and after. On each side, and in
@@ -22,6 +24,17 @@ type PathComparison struct {
 	Static   Pair                `json:"static_m"` // total head where the way ends, less that where it begins
 	Elements []ElementComparison `json:"elements"`
 	Reason   string              `json:"reason"` // why it cannot be taken apart; empty where it is
+
+	Profiles [2]Profile `json:"-"` // before and after, for drawing
+}
+
+// Profile is the hydraulic grade along a way, m above the keel: the total head less the velocity head of the run, which is
+// how high the water would rise in a gauge glass. A point that holds its head counts as still.
+type Profile struct {
+	Points     []string  // by station, from the first to the last
+	Elevations []float64 // of the points
+	Start, End []float64 // grade at the beginning and end of each step between two stations
+	Pumps      []string  // by step: the pump, or empty for a run
 }
 
 // ElementComparison is what one element on the way loses: the pipe of a run, a fitting, its tees, the weight of its own water,
@@ -81,6 +94,7 @@ func comparePath(before, after *Condition, p both[Pump]) PathComparison {
 	for side, c := range []*Condition{before, after} {
 		way := [][]step{earlier, later}[side]
 		static[side], elements[side], ends[side] = c.along(out.Pump, way)
+		out.Profiles[side] = c.profile(way)
 	}
 	out.Static = pairOf(Figure(static[0]), Figure(static[1]))
 	out.From, out.To = Sides{ends[0][0], ends[1][0]}, Sides{ends[0][1], ends[1][1]}
@@ -229,6 +243,47 @@ func (c *Condition) along(pump string, way []step) (static float64, elements []e
 	return heads[ends[1]] - heads[ends[0]], elements, ends
 }
 
+// profile is the hydraulic grade along a way.
+func (c *Condition) profile(way []step) (p Profile) {
+	sol := c.solved
+	at := map[string]int{}
+	for i, point := range sol.Network.Points {
+		at[point.Name] = i
+	}
+	station := func(name string) {
+		p.Points, p.Elevations = append(p.Points, name), append(p.Elevations, sol.Elevations[at[name]])
+	}
+	for k, s := range way {
+		from, to, _ := c.endsOf(s)
+		if k == 0 {
+			station(from)
+		}
+		station(to)
+		velocityHead, pump := 0.0, s.name
+		if !s.pump {
+			i := c.runIndex(s.name)
+			v := sol.RunFlows[i] / sol.Network.Runs[i].Pipe.Area()
+			velocityHead, pump = v*v/(2*fluids.Gravity), ""
+		}
+		grade := func(name string) float64 {
+			if sol.Network.Points[at[name]].Fixed {
+				return sol.Heads[at[name]]
+			}
+			return sol.Heads[at[name]] - velocityHead
+		}
+		p.Start, p.End, p.Pumps = append(p.Start, grade(from)), append(p.End, grade(to)), append(p.Pumps, pump)
+	}
+	for k := range way { // a pump's flanges have the velocity of the runs beside them
+		if p.Pumps[k] != "" && k > 0 {
+			p.Start[k] = p.End[k-1]
+		}
+		if p.Pumps[k] != "" && k+1 < len(way) {
+			p.End[k] = p.Start[k+1]
+		}
+	}
+	return p
+}
+
 // elementsOf lists what a run loses, each counted in the sense of the way.
 func (c *Condition) elementsOf(s step) (list []element) {
 	i := c.runIndex(s.name)
@@ -315,4 +370,25 @@ func compareElement(before, after *Condition, p both[element]) ElementComparison
 	}
 	e.ByElement, e.ByFlow = Figure(then-loss(p.before)), Figure(loss(p.after)-then)
 	return e
+}
+
+// Pictures returns what plots show of the running pumps on either side; see Condition.Pictures.
+func (c *ConditionComparison) Pictures() (before, after []Picture) {
+	return c.before.Pictures(), c.after.Pictures()
+}
+
+// PathsToDraw returns the ways worth a drawing: those that could be taken apart, and of pumps that do the same on both sides
+// only the first.
+func (c *ConditionComparison) PathsToDraw() (list []PathComparison) {
+	for _, p := range c.Paths {
+		alike := func(q PathComparison) bool {
+			const near = 0.005 // of the head
+			return len(p.Elements) == len(q.Elements) && math.Abs(float64(p.Head.Before-q.Head.Before)) <= near*float64(q.Head.Before) &&
+				math.Abs(float64(p.Head.After-q.Head.After)) <= near*float64(q.Head.After)
+		}
+		if p.Reason == "" && !slices.ContainsFunc(list, alike) {
+			list = append(list, p)
+		}
+	}
+	return list
 }

@@ -60,7 +60,7 @@ func (c GradeChart) extent() (low, high float64) {
 
 // draw draws axis, lines, and the names of points and lines.
 func (c GradeChart) draw(page draw.Canvas) {
-	frame := draw.Crop(page, vg.Points(34), -vg.Points(24), vg.Points(44), 0)
+	frame := draw.Crop(page, vg.Points(34), -vg.Points(24), vg.Points(42), 0)
 	low, high := c.extent()
 	ticks, high := steps(high)
 	step := ticks[1].Value
@@ -82,7 +82,7 @@ func (c GradeChart) draw(page draw.Canvas) {
 	page.FillText(axis, vg.Point{X: page.Min.X - vg.Points(4), Y: (frame.Min.Y + frame.Max.Y) / 2}, "head over the keel ["+c.Units.HeadName+"]")
 	for k, name := range c.Points {
 		frame.StrokeLine2(draw.LineStyle{Color: gridColour, Width: vg.Points(0.5)}, x(float64(k)), frame.Min.Y, x(float64(k)), frame.Max.Y)
-		c.station(page, vg.Point{X: x(float64(k)), Y: frame.Min.Y - vg.Points(4)}, name, frame.Size().X/vg.Length(len(c.Points)-1))
+		c.station(page, vg.Point{X: x(float64(k)), Y: frame.Min.Y - vg.Points(9)}, name, frame.Size().X/vg.Length(len(c.Points)-1))
 	}
 	p := &pen{canvas: frame, x: x, y: y}
 	strokes := []stroke{c.stroke("pipe", asked, stations(len(c.Points)), c.Elevations)}

@@ -69,7 +69,7 @@ func (c PairChart) draw(page draw.Canvas) {
 	low, high := c.extent()
 	ticks, high := steps(high)
 	step := ticks[1].Value
-	low = step * math.Floor(low/step+1e-9)
+	low = step * math.Floor(low/step+0.02) // a trifle below 0 needs no step of its own
 	x := func(v float64) vg.Length {
 		return axis.Min.X + vg.Length((v-low)/(high-low))*axis.Size().X
 	}

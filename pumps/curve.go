@@ -92,6 +92,15 @@ func NewCurve(impeller, speed float64, points []SheetPoint) (*Curve, error) {
 	return c, nil
 }
 
+// WithHead returns the curve with every head multiplied by a factor at the same flows, efficiency, and NPSH required; a power that the
+// sheet gives stays.
+func (c *Curve) WithHead(factor float64) *Curve {
+	out := *c
+	out.head = c.head.scaled(1, factor)
+	out.settle()
+	return &out
+}
+
 // settle notes what the fits say once for all: whether the head rises before it falls, and where the efficiency is best.
 func (c *Curve) settle() {
 	c.bestFlow, c.bestEfficiency = c.findBest()

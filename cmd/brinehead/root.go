@@ -76,7 +76,7 @@ func newRoot(s streams) *cobra.Command {
 	root.SetFlagErrorFunc(func(c *cobra.Command, err error) error {
 		return fmt.Errorf("%w\n\thint: %s --help lists the flags", err, c.CommandPath())
 	})
-	root.AddCommand(newCatalogue(s), newCheck(s), newPump(s), newSuction(s), newTrim(s), newWater(s))
+	root.AddCommand(newCatalogue(s), newCheck(s), newCompare(s), newPump(s), newSuction(s), newTrim(s), newWater(s))
 	return root
 }
 
@@ -103,10 +103,15 @@ type common struct {
 var formats = []string{"text", "json", "csv"}
 
 func addCommon(c *cobra.Command, o *common) {
+	addAnswer(c, o)
+	c.Flags().StringVar(&o.change, "change", "", "folder with the tables that a planned change rewrites")
+}
+
+// addAnswer adds the common flags but --change, for a command that names its change itself.
+func addAnswer(c *cobra.Command, o *common) {
 	f := c.Flags()
 	f.StringVar(&o.format, "format", "text", "what to print: "+strings.Join(formats, ", "))
 	f.StringVar(&o.out, "out", "", "folder to write tables and plots into")
-	f.StringVar(&o.change, "change", "", "folder with the tables that a planned change rewrites")
 	f.StringArrayVar(&o.conditions, "condition", nil, "only this condition (may be given again)")
 	f.StringVar(&o.unitSystem, "units", "metric", "units of text and csv: "+strings.Join(report.UnitSystems, ", "))
 	completeFrom(c, "format", formats)

@@ -203,7 +203,7 @@ func TestTrimFiles(t *testing.T) {
 		t.Fatalf("exit code %d, %s", code, stderr)
 	}
 	for name, says := range map[string][]string{
-		"trim.csv": {"present,300,", "final,"}, "trim-methods.csv": {"digitised neighbours", "plain affinity"}, "side-effects.csv": {"minimum pressure"}, "ways.csv": {"throttling", "a year"},
+		"trim.csv": {"present,300,", "final,"}, "trim-methods.csv": {"digitised neighbours", "plain affinity"}, "side-effects.csv": {"minimum pressure"}, "other-ways.csv": {"throttling", "a year"},
 		"trim-curve.svg": {"300 mm now", "methods of trim", "governs: "}, "trim-power.svg": {"motor", "shaft power [hp]"}, "trim-energy.svg": {"as it stands", "MWh"},
 		"trim-curve.png": nil, "trim-power.png": nil, "trim-energy.png": nil,
 	} {

@@ -59,6 +59,10 @@ type HeadChart struct {
 	Systems         []Line
 	Duty            []Mark
 	Bounds          []Bound
+
+	// What was before a change: lines drawn broken, operating points open.
+	FormerPumps, FormerSystems []Line
+	FormerDuty                 []Mark
 }
 
 // Write draws the chart in a format and size (the zero value is 160 x 110 mm). An error is one of writing, or of a format
@@ -73,9 +77,17 @@ func (c HeadChart) figure() *figure {
 	for _, p := range c.Pumps {
 		f.pumpLine(p, pumpColour)
 	}
+	for _, p := range c.FormerPumps {
+		f.line(p, former, pumpColour)
+	}
 	for _, s := range c.Systems {
 		f.line(s, asked, systemColour)
 	}
+	for _, s := range c.FormerSystems {
+		f.line(s, former, systemColour)
+	}
+	f.duty(c.FormerDuty)
+	f.formerMarks, f.marks = f.marks, nil
 	f.duty(c.Duty)
 	return f
 }

@@ -53,6 +53,7 @@ const (
 	asked                // thin: what is asked for
 	beyond               // dotted: no data
 	edged                // hair: the edge of a band, a level
+	former               // dashed: what was before a change
 )
 
 func (w weight) style(c color.Color) draw.LineStyle {
@@ -61,6 +62,8 @@ func (w weight) style(c color.Color) draw.LineStyle {
 		return draw.LineStyle{Color: c, Width: vg.Points(0.9)}
 	case edged:
 		return draw.LineStyle{Color: c, Width: vg.Points(0.5)}
+	case former:
+		return draw.LineStyle{Color: c, Width: vg.Points(1.1), Dashes: []vg.Length{vg.Points(7), vg.Points(3)}}
 	case beyond:
 		return draw.LineStyle{Color: c, Width: vg.Points(1.6), Dashes: []vg.Length{vg.Points(1.5), vg.Points(3.5)}}
 	}
@@ -91,7 +94,7 @@ type figure struct {
 	units                     Units
 	bands                     []stroke // filled outlines
 	strokes                   []stroke
-	marks                     []Mark // in axis units
+	marks, formerMarks        []Mark // in axis units; the former of before a change
 	limits                    []Bound
 	brackets                  []bracket
 
@@ -225,7 +228,7 @@ func (f *figure) extent() (x, y float64) {
 			}
 		}
 	}
-	for _, m := range f.marks {
+	for _, m := range slices.Concat(f.formerMarks, f.marks) {
 		x, y = math.Max(x, m.Flow), math.Max(y, m.Value)
 	}
 	for _, b := range f.limits {
@@ -359,13 +362,16 @@ func (f *figure) Plot(c draw.Canvas, p *plot.Plot) {
 	for _, b := range f.brackets {
 		pen.bracket(b)
 	}
+	for _, m := range f.formerMarks {
+		pen.mark(m, true)
+	}
 	for _, m := range f.marks {
-		pen.mark(m)
+		pen.mark(m, false)
 	}
 	for _, b := range f.limits { // names last, when it is known what they must keep clear of
 		pen.boundName(b)
 	}
-	for _, m := range f.marks {
+	for _, m := range slices.Concat(f.formerMarks, f.marks) {
 		pen.labelAt(m.Label, vg.Point{X: toX(m.Flow), Y: toY(m.Value)}, inkColour)
 	}
 	for _, b := range f.brackets {

@@ -173,12 +173,22 @@ func (p *pen) bracket(b bracket) {
 	p.remember([]vg.Point{{X: x, Y: low}, {X: x, Y: high}})
 }
 
-// mark draws an operating point.
-func (p *pen) mark(m Mark) {
+// mark draws an operating point, or an open one of before a change.
+func (p *pen) mark(m Mark, former bool) {
 	at := vg.Point{X: p.x(m.Flow), Y: p.y(m.Value)}
-	p.canvas.DrawGlyph(draw.GlyphStyle{Color: inkColour, Radius: vg.Points(3.4), Shape: draw.CircleGlyph{}}, at)
+	p.dot(at, former, inkColour)
 	r := vg.Points(5)
 	p.keep(vg.Rectangle{Min: vg.Point{X: at.X - r, Y: at.Y - r}, Max: vg.Point{X: at.X + r, Y: at.Y + r}})
+}
+
+// dot draws a filled mark, or an open one for what was before a change.
+func (p *pen) dot(at vg.Point, former bool, c color.Color) {
+	style := draw.GlyphStyle{Color: c, Radius: vg.Points(3.4), Shape: draw.CircleGlyph{}}
+	if former {
+		p.canvas.DrawGlyph(draw.GlyphStyle{Color: color.White, Radius: style.Radius, Shape: draw.CircleGlyph{}}, at)
+		style.Shape = draw.RingGlyph{}
+	}
+	p.canvas.DrawGlyph(style, at)
 }
 
 // labelAt writes a label near a point: of the places round it the one that is clearest, the nearer of equals.

@@ -40,9 +40,9 @@ func WriteSuctionText(w io.Writer, a *study.Suction, u Units) error {
 	if a.Before != nil {
 		lines = append(append(lines, ""), strainerLines(a.Before, u, "How dirty it might get before the change")...)
 	}
-	lines = append(append(lines, ""), limitLines(a, u)...)
+	lines = append(append(lines, ""), marginLimitLines(a, u)...)
 	lines = append(lines, suctionRemarks(a, u)...)
-	lines = append(lines, worstLines(a, u)...)
+	lines = append(lines, worstNPSHLines(a, u)...)
 	lines = append(lines, "", "Rules judged by default:")
 	if len(a.Defaults) == 0 {
 		lines[len(lines)-1] = "The rules are those of limits.csv."
@@ -214,7 +214,7 @@ func strainerLines(a *study.Suction, u Units, title string) []string {
 	return append(lines, wrap("  ", "    ", "Whether the basket itself bears the drop is not judged: ask its maker (baskets burst above some 1 bar: a strainer maker's page).")...)
 }
 
-func limitLines(a *study.Suction, u Units) []string {
+func marginLimitLines(a *study.Suction, u Units) []string {
 	lines := []string{"How far the margin holds, all else as it stands"}
 	var kinds []string
 	for _, c := range a.Cases {
@@ -302,8 +302,8 @@ func suctionRemarks(a *study.Suction, u Units) []string {
 	return lines
 }
 
-// worstLines takes the NPSH of the worst case apart, and of each pump in a single case.
-func worstLines(a *study.Suction, u Units) []string {
+// worstNPSHLines takes the NPSH of the worst case apart, and of each pump in a single case.
+func worstNPSHLines(a *study.Suction, u Units) []string {
 	least := study.Figure(math.Inf(1))
 	for _, c := range a.Cases {
 		for _, p := range c.Pumps {

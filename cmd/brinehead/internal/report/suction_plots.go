@@ -108,7 +108,7 @@ func marginChart(s study.StrainerPicture, u Units, title, subtitle string) plots
 	return c
 }
 
-func profileChart(p study.Profile, u Units, title, subtitle string) plots.ProfileChart {
+func profileChart(p study.SuctionProfile, u Units, title, subtitle string) plots.ProfileChart {
 	c := plots.ProfileChart{Title: title, Subtitle: subtitle + "; fittings drawn evenly along their run", Units: plotUnits(u),
 		Pipe: line("pipe", p.Pipe.Flow, p.Pipe.Value), Grade: line("hydraulic grade", p.Grade.Flow, p.Grade.Value),
 		Absolute: line("absolute pressure", p.Absolute.Flow, p.Absolute.Value), Vapour: line("vapour pressure", p.Vapour.Flow, p.Vapour.Value)}

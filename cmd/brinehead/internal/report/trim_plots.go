@@ -19,7 +19,7 @@ func TrimFiles(a *study.Trim, u Units) ([]File, error) {
 		{"trim.csv", func(b *bytes.Buffer) error { return WriteTrimCSV(b, a, u) }},
 		{"trim-methods.csv", func(b *bytes.Buffer) error { return WriteTrimMethodsCSV(b, a, u) }},
 		{"side-effects.csv", func(b *bytes.Buffer) error { return WriteSideEffectsCSV(b, a, u) }},
-		{"ways.csv", func(b *bytes.Buffer) error { return WriteOptionsCSV(b, a, u) }},
+		{"other-ways.csv", func(b *bytes.Buffer) error { return WriteOptionsCSV(b, a, u) }},
 	} {
 		var b bytes.Buffer
 		if err := t.write(&b); err != nil {

@@ -36,7 +36,7 @@ type PumpSheet struct {
 	Regions []Region     `json:"regions"`
 	ShutOff Figure       `json:"shut_off_head_m"`
 	Power   SheetPower   `json:"power"`
-	Grade   Grade        `json:"grade"`
+	Grade   AcceptedBand `json:"grade"`
 	Points  []CurvePoint `json:"points"`
 	Trims   []TrimRow    `json:"trims"`
 	Notes   []string     `json:"notes"`
@@ -106,8 +106,8 @@ type SheetPower struct {
 	Wanted   Figure `json:"motor_wanted_kW"` // by the margin of ISO 5199 on the power of best efficiency
 }
 
-// Grade is the acceptance grade of the band.
-type Grade struct {
+// AcceptedBand is the acceptance grade of the band of heads.
+type AcceptedBand struct {
 	Name   string `json:"grade"`
 	Source string `json:"source"`
 	Flow   Figure `json:"flow"` // shares, either way
@@ -196,7 +196,7 @@ func pumpSheet(j *job.Job, built *job.Case, i int, grade pumps.Grade) PumpSheet 
 		s.addFits(c)
 	}
 	s.numbers()
-	s.Grade = Grade{grade.Standard + " " + grade.Name, grade.Flow.Source + "; " + grade.Flow.Mark.Meaning(), Figure(grade.Flow.Below), Figure(grade.Head.Below)}
+	s.Grade = AcceptedBand{grade.Standard + " " + grade.Name, grade.Flow.Source + "; " + grade.Flow.Mark.Meaning(), Figure(grade.Flow.Below), Figure(grade.Head.Below)}
 	shut, _ := u.ShutOffHead()
 	s.ShutOff = Figure(shut)
 	s.power(built.Water.Density)

@@ -321,32 +321,32 @@ func (c *SuctionCase) pump(j *job.Job, s *Condition, i int, solve func(*job.Case
 	return out
 }
 
-// step is a run on the way from the sea to a pump; forward where the water goes from its start to its end.
-type step struct {
+// suctionStep is a run on the way from the sea to a pump; forward where the water goes from its start to its end.
+type suctionStep struct {
 	run     int
 	forward bool
 }
 
 // suctionPath returns the runs that water takes from a fixed point to a point, upstream first: at every point the way that most
 // comes from. It is empty where no water comes.
-func suctionPath(s *Condition, point int) (path []step) {
+func suctionPath(s *Condition, point int) (path []suctionStep) {
 	seen := map[int]bool{}
 	for n := s.solved.Network; !n.Points[point].Fixed && !seen[point]; {
 		seen[point] = true
-		best, most := step{-1, false}, 0.0
+		best, most := suctionStep{-1, false}, 0.0
 		for i, r := range n.Runs {
 			q := s.solved.RunFlows[i]
 			switch {
 			case r.To == point && q > most:
-				best, most = step{i, true}, q
+				best, most = suctionStep{i, true}, q
 			case r.From == point && -q > most:
-				best, most = step{i, false}, -q
+				best, most = suctionStep{i, false}, -q
 			}
 		}
 		if best.run < 0 {
 			return nil
 		}
-		path = append([]step{best}, path...)
+		path = append([]suctionStep{best}, path...)
 		if point = n.Runs[best.run].From; !best.forward {
 			point = n.Runs[best.run].To
 		}
@@ -471,7 +471,7 @@ func (c *SuctionCase) starting(s *Condition, i int, solve func(*job.Case) *Condi
 }
 
 // shares says whether an idle pump's suction is joined to a path by open runs, without passing a pump.
-func (c *SuctionCase) shares(s *Condition, path []step, pump int) bool {
+func (c *SuctionCase) shares(s *Condition, path []suctionStep, pump int) bool {
 	n := s.solved.Network
 	on := map[int]bool{}
 	for _, p := range path {

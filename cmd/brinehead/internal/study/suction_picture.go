@@ -18,7 +18,7 @@ type SuctionPicture struct {
 	Duty      []DutyMark
 
 	Strainers []StrainerPicture
-	Profile   Profile
+	Profile   SuctionProfile
 }
 
 // DutyMark is an operating point on the NPSH available.
@@ -36,8 +36,8 @@ type StrainerPicture struct {
 	Present      DutyMark
 }
 
-// Profile is the suction from its source to the pump: distance, and what stands there.
-type Profile struct {
+// SuctionProfile is the suction from its source to the pump: distance, and what stands there.
+type SuctionProfile struct {
 	Pipe, Grade, Absolute, Vapour Trace
 	Names                         []DutyMark
 }
@@ -117,7 +117,7 @@ func (c *SuctionCase) picture(p PumpSuction) SuctionPicture {
 		out.Strainers = append(out.Strainers, l.picture(p, margin))
 	}
 	if s.Pumps[i].Flow.Known() {
-		out.Profile = s.profile(i)
+		out.Profile = s.suctionProfile(i)
 	}
 	return out
 }
@@ -137,10 +137,10 @@ func (l *StrainerLimit) picture(p PumpSuction, rule float64) StrainerPicture {
 	return out
 }
 
-// profile goes the way of the suction: friction falls evenly along a run, its fittings stand evenly along it.
-func (c *Condition) profile(pump int) Profile {
+// suctionProfile goes the way of the suction: friction falls evenly along a run, its fittings stand evenly along it.
+func (c *Condition) suctionProfile(pump int) SuctionProfile {
 	s := c.solved
-	var p Profile
+	var p SuctionProfile
 	weight := s.Water.Density * fluids.Gravity
 	distance := 0.0
 	put := func(z, head, velocityHead float64) {

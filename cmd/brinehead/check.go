@@ -48,7 +48,7 @@ func check(s streams, o common, folder string) error {
 	}
 	stuck := answer.NotConverged()
 	if o.out != "" && stuck == nil {
-		files, err := report.CheckFiles(answer, o.units)
+		files, err := report.CheckFiles(answer, o.output(j))
 		if err != nil {
 			return err
 		}

@@ -60,7 +60,7 @@ func compare(s streams, o common, folder, change string, options study.CompareOp
 	}
 	stuck := answer.NotConverged()
 	if o.out != "" && stuck == nil {
-		files, err := report.CompareFiles(answer, o.units)
+		files, err := report.CompareFiles(answer, o.output(after))
 		if err != nil {
 			return err
 		}

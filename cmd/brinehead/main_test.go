@@ -16,7 +16,7 @@ import (
 // runs the program as the shell would.
 func brinehead(args ...string) (code int, stdout, stderr string) {
 	var out, err bytes.Buffer
-	code = run(streams{&out, &err}, args)
+	code = run(streams{out: &out, err: &err}, args)
 	return code, out.String(), err.String()
 }
 

@@ -53,7 +53,7 @@ func pumpSheets(s streams, o common, folder, pump, grade string) error {
 		return err
 	}
 	if o.out != "" {
-		files, err := report.PumpFiles(answer, o.units)
+		files, err := report.PumpFiles(answer, o.output(j))
 		if err != nil {
 			return err
 		}

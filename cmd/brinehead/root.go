@@ -7,18 +7,21 @@ import (
 	"io"
 	"runtime/debug"
 	"slices"
+	"strconv"
 	"strings"
 
 	"github.com/spf13/cobra"
 
 	"brinehead/cmd/brinehead/internal/job"
 	"brinehead/cmd/brinehead/internal/report"
+	"brinehead/curves/plots"
 	"brinehead/hydraulics"
 )
 
 // streams are where a command writes: results to out, all else to err.
 type streams struct {
 	out, err io.Writer
+	colour   bool // text goes to a terminal, and may have its verdicts coloured
 }
 
 // Exit codes; a contract.
@@ -76,7 +79,7 @@ func newRoot(s streams) *cobra.Command {
 	root.SetFlagErrorFunc(func(c *cobra.Command, err error) error {
 		return fmt.Errorf("%w\n\thint: %s --help lists the flags", err, c.CommandPath())
 	})
-	root.AddCommand(newCatalogue(s), newCheck(s), newCompare(s), newPump(s), newSuction(s), newTrim(s), newWater(s))
+	root.AddCommand(newCatalogue(s), newCheck(s), newCompare(s), newMan(), newPump(s), newSuction(s), newTrim(s), newWater(s))
 	return root
 }
 
@@ -96,7 +99,11 @@ type common struct {
 	conditions []string
 	unitSystem string
 
-	units report.Units
+	types, only         []string
+	size, date, purpose string
+
+	units    report.Units
+	plotting report.Output
 }
 
 // formats are the values of --format.
@@ -114,8 +121,14 @@ func addAnswer(c *cobra.Command, o *common) {
 	f.StringVar(&o.out, "out", "", "folder to write tables and plots into")
 	f.StringArrayVar(&o.conditions, "condition", nil, "only this condition (may be given again)")
 	f.StringVar(&o.unitSystem, "units", "metric", "units of text and csv: "+strings.Join(report.UnitSystems, ", "))
+	f.StringSliceVar(&o.types, "type", []string{"svg", "png"}, "types of the plots in --out: svg, png, pdf")
+	f.StringSliceVar(&o.only, "only", nil, "only the files in --out whose names hold one of these, such as report,npsh")
+	f.StringVar(&o.size, "size", "", "size of the plots in --out, mm, such as 160x110; without it each has its own")
+	f.StringVar(&o.date, "date", "", "date that the report in --out bears, as you state it")
+	f.StringVar(&o.purpose, "purpose", "", "purpose that the report in --out states")
 	completeFrom(c, "format", formats)
 	completeFrom(c, "units", report.UnitSystems)
+	completeFrom(c, "type", []string{"svg", "png", "pdf"})
 }
 
 // completeFrom lets the shell complete a flag from a list.
@@ -144,8 +157,21 @@ func (s streams) show(format string, a shown) error {
 	if err := write(&text); err != nil {
 		return err
 	}
+	if s.colour && format == "text" {
+		_, err := io.WriteString(s.out, coloured(text.String()))
+		return err
+	}
 	_, err := io.Copy(s.out, &text)
 	return err
+}
+
+// coloured colours the verdicts of a text; the words stay, so that nothing is told by colour alone.
+func coloured(text string) string {
+	const end = "\x1b[0m"
+	return strings.NewReplacer(
+		"NOT MET", "\x1b[1;31mNOT MET"+end, "NOT JUDGED", "\x1b[1;33mNOT JUDGED"+end, "NO CUT", "\x1b[1;31mNO CUT"+end,
+		"EVERY LIMIT MET", "\x1b[1;32mEVERY LIMIT MET"+end, "EVERY SUCTION KEEPS ITS MARGIN", "\x1b[1;32mEVERY SUCTION KEEPS ITS MARGIN"+end,
+	).Replace(text)
 }
 
 // writeCSV writes an answer's CSV into the folder of --out, where one is given.
@@ -173,8 +199,44 @@ func (o *common) parse() (err error) {
 	if err := oneOf("format", o.format, formats); err != nil {
 		return err
 	}
-	o.units, err = report.ParseUnits(o.unitSystem)
-	return err
+	if o.units, err = report.ParseUnits(o.unitSystem); err != nil {
+		return err
+	}
+	return o.parsePlotting()
+}
+
+// parsePlotting checks the flags of what --out writes.
+func (o *common) parsePlotting() error {
+	o.plotting = report.Output{Units: o.units, Only: o.only, Date: o.date, Purpose: o.purpose, Version: version()}
+	for _, t := range o.types {
+		if err := oneOf("type", t, []string{"svg", "png", "pdf"}); err != nil {
+			return err
+		}
+		o.plotting.Types = append(o.plotting.Types, plots.Format(t))
+	}
+	if o.size == "" {
+		return nil
+	}
+	width, height, both := strings.Cut(o.size, "x")
+	w, err1 := strconv.ParseFloat(width, 64)
+	h, err2 := strconv.ParseFloat(height, 64)
+	if !both || err1 != nil || err2 != nil || !(40 <= w && w <= 1000 && 40 <= h && h <= 1000) {
+		return fmt.Errorf("size: found %q, want width and height in mm, 40 to 1000 each, such as 160x110", o.size)
+	}
+	o.plotting.Size = plots.Size{Width: w, Height: h}
+	return nil
+}
+
+// output is what --out writes of a job.
+func (o *common) output(j *job.Job) report.Output {
+	out := o.plotting
+	out.Files = j.Tables.Files
+	for _, c := range j.Tables.Conditions {
+		if kind := strings.ToLower(c.Water.Value); !slices.Contains(out.Kinds, kind) {
+			out.Kinds = append(out.Kinds, kind)
+		}
+	}
+	return out
 }
 
 // oneJob wants the job folder as the one argument.

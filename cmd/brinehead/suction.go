@@ -114,7 +114,7 @@ func suction(s streams, o common, flags suctionFlags, folder string) error {
 		}
 	}
 	if o.out != "" {
-		files, err := report.SuctionFiles(answer, o.units)
+		files, err := report.SuctionFiles(answer, o.output(j))
 		if err != nil {
 			return err
 		}

@@ -88,7 +88,7 @@ func trim(s streams, o common, f trimFlags, folder string) error {
 		return err
 	}
 	if o.out != "" {
-		files, err := report.TrimFiles(answer, o.units)
+		files, err := report.TrimFiles(answer, o.output(j))
 		if err != nil {
 			return err
 		}

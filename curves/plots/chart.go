@@ -15,7 +15,8 @@ type Units struct {
 	HeadFactor float64 // axis value of 1 m
 }
 
-func (u Units) orMetric() Units {
+// OrMetric returns the units with m3/h and m where none are named.
+func (u Units) OrMetric() Units {
 	if u.FlowFactor == 0 {
 		u.FlowName, u.FlowFactor = "m3/h", 3600
 	}

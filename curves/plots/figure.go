@@ -102,7 +102,7 @@ type figure struct {
 }
 
 func newFigure(title, subtitle, quantity string, u Units) *figure {
-	return &figure{title: printable(title), subtitle: printable(subtitle), quantity: quantity, units: u.orMetric()}
+	return &figure{title: printable(title), subtitle: printable(subtitle), quantity: quantity, units: u.OrMetric()}
 }
 
 // printable makes a user's text fit to be drawn: no control characters, no broken encoding, not endless.
@@ -274,6 +274,14 @@ func (f *figure) write(w io.Writer, format Format, size Size) error {
 // writePage makes a white page of a size, has it drawn on, and writes it in a format.
 func writePage(w io.Writer, format Format, size Size, drawn func(page draw.Canvas)) error {
 	width, height := vg.Length(size.Width)*vg.Millimeter, vg.Length(size.Height)*vg.Millimeter
+	switch to := w.(type) {
+	case page:
+		drawn(draw.NewCanvas(to.Canvas, width, height))
+		return nil
+	case *measure:
+		to.size = size
+		return nil
+	}
 	var canvas vg.CanvasWriterTo
 	switch format {
 	case SVG:

@@ -27,7 +27,7 @@ type Grade struct{ Start, End []float64 }
 
 // Write draws the chart in a format, as wide as its points need.
 func (c GradeChart) Write(w io.Writer, format Format) error {
-	c.Units = c.Units.orMetric()
+	c.Units = c.Units.OrMetric()
 	width := math.Max(160, 40+17*float64(len(c.Points)))
 	return writePage(w, format, Size{width, 115}, func(page draw.Canvas) {
 		f := &figure{title: printable(c.Title), subtitle: printable(c.Subtitle)}

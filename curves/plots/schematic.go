@@ -60,7 +60,7 @@ func (s Schematic) Write(w io.Writer, format Format, size Size) error {
 	if s.PressureFactor == 0 {
 		s.PressureName, s.PressureFactor = "bar", 1e-5
 	}
-	s.Units = s.Units.orMetric()
+	s.Units = s.Units.OrMetric()
 	return writePage(w, format, size, func(page draw.Canvas) {
 		f := &figure{title: printable(s.Title), subtitle: printable(s.Subtitle)}
 		top := f.heading(page)

@@ -19,7 +19,7 @@ func (c MarginChart) Write(w io.Writer, format Format, size Size) error {
 }
 
 func (c MarginChart) figure() *figure {
-	u := c.Units.orMetric()
+	u := c.Units.OrMetric()
 	u.FlowName, u.FlowFactor = "%", 100
 	f := newFigure(c.Title, c.Subtitle, "NPSH margin", u)
 	f.across = "blocked share of the strainer's open area"
@@ -49,7 +49,7 @@ func (c ProfileChart) Write(w io.Writer, format Format, size Size) error {
 }
 
 func (c ProfileChart) figure() *figure {
-	u := c.Units.orMetric()
+	u := c.Units.OrMetric()
 	u.FlowName, u.FlowFactor = u.HeadName, u.HeadFactor
 	f := newFigure(c.Title, c.Subtitle, "height above the keel, head", u)
 	f.across = "way from the sea to the pump"

@@ -151,21 +151,7 @@ func reason(f study.Finding, u Units) string {
 // conditionLines writes one condition.
 func conditionLines(c *study.Condition, u Units, withRuns bool) []string {
 	lines := wrap("", "  ", c.Condition+": "+waterText(c, u))
-	pumps := grid{left: 1, head: []string{"pump", u.Unit("m3/h"), "head " + u.Unit("m"), "eff. %", "shaft " + u.Unit("kW"),
-		"NPSHA", "NPSHR", "margin", "of best %"}}
-	for _, p := range c.Pumps {
-		row := []string{p.Pump, u.Text(p.Flow, "m3/h", 1), u.Text(p.Head, "m", 2), u.Text(100*p.Efficiency, "", 1), u.Text(p.ShaftPower, "kW", 1),
-			u.Text(p.NPSHAvailable, "m", 2), u.Text(p.NPSHRequired, "m", 2), u.Text(p.NPSHMargin, "m", 2), u.Text(100*p.BestShare, "", 0)}
-		if !p.Running {
-			row = []string{p.Pump, "idle", "", "", "", "", "", "", ""}
-			if p.Flow < 0 {
-				row[1] = "leaks " + u.Text(-p.Flow, "m3/h", 1)
-			}
-		} else if p.Extrapolated {
-			row[1] = "off curve"
-		}
-		pumps.rows = append(pumps.rows, row)
-	}
+	pumps := pumpGrid(c, u)
 	if len(pumps.rows) > 0 {
 		lines = append(lines, pumps.lines("  ")...)
 	}
@@ -184,6 +170,26 @@ func conditionLines(c *study.Condition, u Units, withRuns bool) []string {
 		lines = append(lines, wrap("  ", "    ", "Note: "+n)...)
 	}
 	return lines
+}
+
+// pumpGrid is the operating points of a condition.
+func pumpGrid(c *study.Condition, u Units) grid {
+	pumps := grid{left: 1, head: []string{"pump", u.Unit("m3/h"), "head " + u.Unit("m"), "eff. %", "shaft " + u.Unit("kW"),
+		"NPSHA", "NPSHR", "margin", "of best %"}}
+	for _, p := range c.Pumps {
+		row := []string{p.Pump, u.Text(p.Flow, "m3/h", 1), u.Text(p.Head, "m", 2), u.Text(100*p.Efficiency, "", 1), u.Text(p.ShaftPower, "kW", 1),
+			u.Text(p.NPSHAvailable, "m", 2), u.Text(p.NPSHRequired, "m", 2), u.Text(p.NPSHMargin, "m", 2), u.Text(100*p.BestShare, "", 0)}
+		if !p.Running {
+			row = []string{p.Pump, "idle", "", "", "", "", "", "", ""}
+			if p.Flow < 0 {
+				row[1] = "leaks " + u.Text(-p.Flow, "m3/h", 1)
+			}
+		} else if p.Extrapolated {
+			row[1] = "off curve"
+		}
+		pumps.rows = append(pumps.rows, row)
+	}
+	return pumps
 }
 
 func worst(name string) string {

@@ -90,16 +90,7 @@ func limitLines(a *study.Comparison, u Units) []string {
 	gained = append(gained, grouped(a, func(l study.ConditionLimit) (group string, of bool) {
 		return "not judged before (" + l.Reason.Before + "), now met", l.Outcome == study.Gained && l.Before == study.NotJudged
 	})...)
-	notJudged := grouped(a, func(l study.ConditionLimit) (group string, of bool) {
-		was := string(l.Before) + " before, now not judged: "
-		switch l.Before {
-		case "":
-			was = "not there before, now not judged: "
-		case study.NotJudged:
-			was = "not judged before either: "
-		}
-		return was + l.Reason.After, l.After == study.NotJudged
-	})
+	notJudged := notJudgedAfter(a)
 	var lines []string
 	for _, section := range []struct {
 		title string
@@ -111,6 +102,20 @@ func limitLines(a *study.Comparison, u Units) []string {
 		}
 	}
 	return lines
+}
+
+// notJudgedAfter lists the limits that could not be judged after the change.
+func notJudgedAfter(a *study.Comparison) []string {
+	return grouped(a, func(l study.ConditionLimit) (group string, of bool) {
+		was := string(l.Before) + " before, now not judged: "
+		switch l.Before {
+		case "":
+			was = "not there before, now not judged: "
+		case study.NotJudged:
+			was = "not judged before either: "
+		}
+		return was + l.Reason.After, l.After == study.NotJudged
+	})
 }
 
 // wasBefore says what a limit was before the change.
@@ -284,12 +289,7 @@ func comparedLines(c *study.ConditionComparison, u Units, whole bool) []string {
 	if !c.Differs() {
 		return append(lines, "  no figure and no verdict is another")
 	}
-	pumps := grid{left: 1, head: []string{"pump", u.Unit("m3/h"), "after", "%", "head " + u.Unit("m"), "after", u.Unit("kW"), "after", "margin " + u.Unit("m"), "after"}}
-	for _, p := range c.Pumps {
-		pumps.rows = append(pumps.rows, []string{p.Pump, stateOr(p.State.Before, u.Text(p.Flow.Before, "m3/h", 1)), stateOr(p.State.After, u.Text(p.Flow.After, "m3/h", 1)), percentRunning(p),
-			u.Text(p.Head.Before, "m", 2), u.Text(p.Head.After, "m", 2), u.Text(p.ShaftPower.Before, "kW", 1), u.Text(p.ShaftPower.After, "kW", 1),
-			u.Text(p.NPSHMargin.Before, "m", 2), u.Text(p.NPSHMargin.After, "m", 2)})
-	}
+	pumps := comparedPumps(c, u)
 	if len(pumps.rows) > 0 {
 		lines = append(lines, pumps.lines("  ")...)
 	}
@@ -320,6 +320,17 @@ func comparedLines(c *study.ConditionComparison, u Units, whole bool) []string {
 		lines = append(lines, pathLines(p, u)...)
 	}
 	return lines
+}
+
+// comparedPumps is the pumps of a condition before and after.
+func comparedPumps(c *study.ConditionComparison, u Units) grid {
+	pumps := grid{left: 1, head: []string{"pump", u.Unit("m3/h"), "after", "%", "head " + u.Unit("m"), "after", u.Unit("kW"), "after", "margin " + u.Unit("m"), "after"}}
+	for _, p := range c.Pumps {
+		pumps.rows = append(pumps.rows, []string{p.Pump, stateOr(p.State.Before, u.Text(p.Flow.Before, "m3/h", 1)), stateOr(p.State.After, u.Text(p.Flow.After, "m3/h", 1)), percentRunning(p),
+			u.Text(p.Head.Before, "m", 2), u.Text(p.Head.After, "m", 2), u.Text(p.ShaftPower.Before, "kW", 1), u.Text(p.ShaftPower.After, "kW", 1),
+			u.Text(p.NPSHMargin.Before, "m", 2), u.Text(p.NPSHMargin.After, "m", 2)})
+	}
+	return pumps
 }
 
 // stateOr writes a state in words where it is not the usual one, else the figure.

@@ -6,6 +6,7 @@ import (
 	"io"
 	"math"
 	"slices"
+	"strings"
 
 	"brinehead/cmd/brinehead/internal/study"
 	"brinehead/curves/plots"
@@ -13,53 +14,37 @@ import (
 
 // CompareFiles makes the tables and plots of a comparison: changes.csv, differences.csv, verdicts.csv, ways.csv, harbour.csv and
 // tolerances.csv, and for each condition the plots of comparePlots, as SVG and PNG.
-func CompareFiles(a *study.Comparison, u Units) ([]File, error) {
-	var files []File
-	for _, t := range []struct {
-		name  string
-		write func(*bytes.Buffer) error
-	}{
+func CompareFiles(a *study.Comparison, o Output) ([]File, error) {
+	u := o.Units
+	files, err := o.tables([]csvFile{
 		{"changes.csv", func(b *bytes.Buffer) error { return WriteChangesCSV(b, a) }},
 		{"differences.csv", func(b *bytes.Buffer) error { return WriteDifferencesCSV(b, a, u) }},
 		{"verdicts.csv", func(b *bytes.Buffer) error { return WriteVerdictsCSV(b, a, u) }},
 		{"ways.csv", func(b *bytes.Buffer) error { return WriteWaysCSV(b, a, u) }},
 		{"harbour.csv", func(b *bytes.Buffer) error { return WriteHarbourCSV(b, a, u) }},
 		{"tolerances.csv", func(b *bytes.Buffer) error { return WriteTolerancesCSV(b, a) }},
-	} {
-		var b bytes.Buffer
-		if err := t.write(&b); err != nil {
-			return nil, fmt.Errorf("%s: %w", t.name, err)
-		}
-		files = append(files, File{t.name, b.Bytes()})
+	})
+	if err != nil {
+		return nil, err
 	}
+	var all []plot
 	taken := map[string]bool{}
 	for i := range a.Conditions {
 		c := &a.Conditions[i]
-		plots, err := comparePlots(a, c, u, fileStem(c.Condition, taken))
-		if err != nil {
-			return nil, fmt.Errorf("plots of condition %s: %w", c.Condition, err)
-		}
-		files = append(files, plots...)
+		all = append(all, comparePlots(a, c, u, fileStem(c.Condition, taken))...)
 	}
-	return files, nil
-}
-
-// drawn is a chart that can be written in a format.
-type drawn struct {
-	name  string
-	write func(io.Writer, plots.Format, plots.Size) error
+	return o.finish(files, all, compareDocument(a, o, all))
 }
 
 // comparePlots draws one condition before and after: both system curves on the pump curves, the flow of every run, and for each
 // pump whose head can be taken apart what each element on the way loses, and the hydraulic grade.
-func comparePlots(a *study.Comparison, c *study.ConditionComparison, u Units, stem string) ([]File, error) {
+func comparePlots(a *study.Comparison, c *study.ConditionComparison, u Units, stem string) (all []plot) {
 	title := fmt.Sprintf("%s with %s: %s", a.Job, a.Change, c.Condition)
-	all := []drawn{}
 	if chart, has := systemsChart(c, title, u); has {
-		all = append(all, drawn{"systems", chart.Write})
+		all = append(all, plot{stem + "-systems", "Both system curves on the pump curves in " + c.Condition, chart.Write, nil})
 	}
 	flows := flowsChart(c, title, u)
-	all = append(all, drawn{"flows", func(b io.Writer, f plots.Format, _ plots.Size) error { return flows.Write(b, f) }})
+	all = append(all, plot{stem + "-flows", "Flow by run before and after in " + c.Condition, sized(flows.Write), pairGrid(flows)})
 	shown := c.PathsToDraw()
 	for _, p := range shown {
 		suffix := ""
@@ -67,18 +52,24 @@ func comparePlots(a *study.Comparison, c *study.ConditionComparison, u Units, st
 			suffix = "-" + fileStem(p.Pump, map[string]bool{})
 		}
 		losses, grade := lossesChart(p, title, u), gradeChart(p, title, u)
-		all = append(all, drawn{"losses" + suffix, func(b io.Writer, f plots.Format, _ plots.Size) error { return losses.Write(b, f) }},
-			drawn{"grade" + suffix, func(b io.Writer, f plots.Format, _ plots.Size) error { return grade.Write(b, f) }})
+		all = append(all, plot{stem + "-losses" + suffix, "Loss by element on the way of " + p.Pump + " in " + c.Condition, sized(losses.Write), pairGrid(losses)},
+			plot{stem + "-grade" + suffix, "Hydraulic grade on the way of " + p.Pump + " in " + c.Condition, sized(grade.Write), nil})
 	}
-	var files []File
-	for _, d := range all {
-		of, err := draw(stem+"-"+d.name, d.write)
-		if err != nil {
-			return nil, err
-		}
-		files = append(files, of...)
+	return all
+}
+
+// sized lets a chart that knows its own size be drawn where one is asked for.
+func sized(write func(io.Writer, plots.Format) error) func(io.Writer, plots.Format, plots.Size) error {
+	return func(w io.Writer, f plots.Format, _ plots.Size) error { return write(w, f) }
+}
+
+// pairGrid lists the figures of a chart of pairs.
+func pairGrid(c plots.PairChart) *grid {
+	g := &grid{left: 1, head: []string{"", "before", "after"}}
+	for _, r := range c.Rows {
+		g.rows = append(g.rows, []string{strings.TrimSpace(r.Group + " " + r.Name), short4(r.Before), short4(r.After)})
 	}
-	return files, nil
+	return g
 }
 
 // systemsChart lays what the system asks before and after on the pump curves. There is none where no pump runs.

@@ -17,30 +17,65 @@ type File struct {
 
 // CheckFiles makes the tables and plots of an answer: duty.csv, losses.csv, findings.csv, supplied.csv, and for each condition with a
 // solution a plot of head and one of NPSH over flow, as SVG and PNG.
-func CheckFiles(a *study.Check, u Units) ([]File, error) {
-	var files []File
-	for _, t := range []struct {
-		name  string
-		write func(*bytes.Buffer) error
-	}{
+func CheckFiles(a *study.Check, o Output) ([]File, error) {
+	u := o.Units
+	files, err := o.tables([]csvFile{
 		{"duty.csv", func(b *bytes.Buffer) error { return WriteDutyCSV(b, a, u) }},
 		{"losses.csv", func(b *bytes.Buffer) error { return WriteLossesCSV(b, a, u) }},
 		{"findings.csv", func(b *bytes.Buffer) error { return WriteFindingsCSV(b, a, u) }},
 		{"supplied.csv", func(b *bytes.Buffer) error { return WriteSuppliedCSV(b, a) }},
-	} {
+	})
+	if err != nil {
+		return nil, err
+	}
+	var all []plot
+	taken := map[string]bool{}
+	for i := range a.Conditions {
+		all = append(all, conditionPlots(a, &a.Conditions[i], u, fileStem(a.Conditions[i].Condition, taken))...)
+	}
+	return o.finish(files, all, checkDocument(a, o, all))
+}
+
+// csvFile is a table that is written as CSV.
+type csvFile struct {
+	name  string
+	write func(*bytes.Buffer) error
+}
+
+// tables writes those of the tables that are asked for.
+func (o Output) tables(list []csvFile) (files []File, err error) {
+	for _, t := range list {
+		if !o.wants(t.name) {
+			continue
+		}
 		var b bytes.Buffer
 		if err := t.write(&b); err != nil {
 			return nil, fmt.Errorf("%s: %w", t.name, err)
 		}
 		files = append(files, File{t.name, b.Bytes()})
 	}
-	taken := map[string]bool{}
-	for i := range a.Conditions {
-		plots, err := conditionPlots(a, &a.Conditions[i], u, fileStem(a.Conditions[i].Condition, taken))
-		if err != nil {
-			return nil, fmt.Errorf("plots of condition %s: %w", a.Conditions[i].Condition, err)
+	return files, nil
+}
+
+// finish adds to the tables their plots and the report in both forms.
+func (o Output) finish(files []File, all []plot, d *document) ([]File, error) {
+	drawn, err := o.drawn(all)
+	if err != nil {
+		return nil, err
+	}
+	files = append(files, drawn...)
+	for _, form := range []struct {
+		name  string
+		write func() ([]byte, error)
+	}{{"report.html", d.html}, {"report.pdf", d.pdf}} {
+		if !o.wants(form.name) {
+			continue
 		}
-		files = append(files, plots...)
+		content, err := form.write()
+		if err != nil {
+			return nil, err
+		}
+		files = append(files, File{form.name, content})
 	}
 	return files, nil
 }

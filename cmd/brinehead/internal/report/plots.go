@@ -1,10 +1,8 @@
 package report
 
 import (
-	"bytes"
 	"fmt"
 	"math"
-	"strings"
 
 	"brinehead/cmd/brinehead/internal/study"
 	"brinehead/curves/plots"
@@ -12,10 +10,10 @@ import (
 
 // conditionPlots draws a condition's network, and head and NPSH over flow where a pump runs. A condition without a
 // solution has none to draw.
-func conditionPlots(a *study.Check, c *study.Condition, u Units, stem string) ([]File, error) {
+func conditionPlots(a *study.Check, c *study.Condition, u Units, stem string) []plot {
 	drawing := c.Drawing()
 	if drawing == nil {
-		return nil, nil
+		return nil
 	}
 	title := fmt.Sprintf("%s: %s", a.Job, c.Condition)
 	units := plotUnits(u)
@@ -57,27 +55,24 @@ func conditionPlots(a *study.Check, c *study.Condition, u Units, stem string) ([
 			head.Bounds, npsh.Bounds = append(head.Bounds, bound), append(npsh.Bounds, bound)
 		}
 	}
-	var files []File
-	type plot struct {
-		name  string
-		write func(*bytes.Buffer, plots.Format) error
-	}
-	all := []plot{{"schematic", func(b *bytes.Buffer, f plots.Format) error { return schematic.Write(b, f, plots.Size{}) }}}
+	all := []plot{{stem + "-schematic", "The network in " + c.Condition + ": flows, and pressures at the points", schematic.Write, nil}}
 	if len(pictures) > 0 {
+		units := units.OrMetric()
 		all = append(all,
-			plot{"head", func(b *bytes.Buffer, f plots.Format) error { return head.Write(b, f, plots.Size{}) }},
-			plot{"npsh", func(b *bytes.Buffer, f plots.Format) error { return npsh.Write(b, f, plots.Size{}) }})
+			plot{stem + "-head", "Head over flow in " + c.Condition + ": pump curves, what the system asks, operating points", head.Write,
+				seriesGrid("flow "+units.FlowName, "head "+units.HeadName, units.FlowFactor, units.HeadFactor, append(pumpLines(head.Pumps), head.Systems...)...)},
+			plot{stem + "-npsh", "NPSH over flow in " + c.Condition + ": available and required", npsh.Write,
+				seriesGrid("flow "+units.FlowName, "NPSH "+units.HeadName, units.FlowFactor, units.HeadFactor, append(pumpLines(npsh.Required), npsh.Available...)...)})
 	}
-	for _, d := range all {
-		for _, format := range []plots.Format{plots.SVG, plots.PNG} {
-			var b bytes.Buffer
-			if err := d.write(&b, format); err != nil {
-				return nil, fmt.Errorf("%s: %w", d.name, err)
-			}
-			files = append(files, File{strings.Join([]string{stem, d.name}, "-") + "." + string(format), b.Bytes()})
-		}
+	return all
+}
+
+// pumpLines are the lines of pump curves over their digitised ranges.
+func pumpLines(list []plots.PumpLine) (lines []plots.Line) {
+	for _, p := range list {
+		lines = append(lines, p.Line)
 	}
-	return files, nil
+	return lines
 }
 
 func line(name string, flow, value []float64) plots.Line {

@@ -41,38 +41,15 @@ func sheetLines(s *study.PumpSheet, a *study.PumpSheets, u Units) []string {
 			lines = append(lines, wrap("  ", "    ", "Note: "+n)...)
 		}
 	}
-	n := s.Numbers
-	lines = append(lines, "")
-	for _, fact := range []string{
-		fmt.Sprintf("best efficiency %s %% at %s %s, %s %s", u.Text(100*n.BestEfficiency, "", 1), u.Text(n.BestFlow, "m3/h", 0), u.Unit("m3/h"), u.Text(n.BestHead, "m", 2), u.Unit("m")),
-		fmt.Sprintf("type number K %s (ISO 17769), specific speed nq %s (%s US), suction specific speed %s (%s US)", u.Text(n.TypeNumber, "", 3), u.Text(n.Specific, "", 1),
-			u.Text(n.SpecificUS, "", 0), u.Text(n.Suction, "", 0), u.Text(n.SuctionUS, "", 0)),
-		fmt.Sprintf("head against a shut valve %s %s", u.Text(s.ShutOff, "m", 2), u.Unit("m")),
-		fmt.Sprintf("greatest shaft power %s %s at %s %s; motor %s %s, wanted %s %s (margin of ISO 5199 on the power at best efficiency, from memory, verify)",
-			u.Text(s.Power.Greatest, "kW", 1), u.Unit("kW"), u.Text(s.Power.At, "m3/h", 0), u.Unit("m3/h"), u.Text(s.Power.Motor, "kW", 1), u.Unit("kW"), u.Text(s.Power.Wanted, "kW", 1), u.Unit("kW")),
-	} {
-		lines = append(lines, wrap("  ", "    ", fact)...)
-	}
-	for _, r := range s.Regions {
-		lines = append(lines, wrap("  ", "    ", fmt.Sprintf("%s region %s to %s %s [%s]", r.Name, u.Text(r.From, "m3/h", 0), u.Text(r.To, "m3/h", 0), u.Unit("m3/h"), r.Source))...)
-	}
+	lines = append(append(lines, ""), factLines(s, u)...)
 	lines = append(append(lines, ""), wrap("  ", "    ", fmt.Sprintf("How the sheet was fitted, each quantity over its own flows (%s): a smoothing spline or the parabola, whichever leaves single points out best", u.Unit("m3/h")))...)
-	fits := grid{left: 1, head: []string{"quantity", "points", "from", "to", "curve", "residual", "left out"}}
-	for _, f := range s.Fits {
-		unit := u.Unit(f.Unit)
-		fits.rows = append(fits.rows, []string{f.Quantity, fmt.Sprint(f.Points), u.Text(f.Low, "m3/h", 0), u.Text(f.High, "m3/h", 0), f.Method,
-			u.Text(f.Residual, f.Unit, 3) + " " + unit, u.Text(f.LeaveOneOut, f.Unit, 3) + " " + unit})
-	}
+	fits := fitGrid(s, u)
 	lines = append(lines, fits.lines("    ")...)
 	if b := s.Balance; b != nil && b.Slip == "" {
 		lines = append(lines, wrap("  ", "    ", fmt.Sprintf("Efficiency times power over rho g Q H: %s over %s: the sheet agrees with itself.", u.Text(b.Ratio, "", 3), counted(b.Points, "point")))...)
 	}
 	lines = append(append(lines, ""), wrap("  ", "    ", fmt.Sprintf("Curve, with the heads that grade %s accepts (%g %% of flow, %g %% of head)", s.Grade.Name, 100*float64(s.Grade.Flow), 100*float64(s.Grade.Head)))...)
-	points := grid{head: []string{u.Unit("m3/h"), "head " + u.Unit("m"), "lowest", "highest", "eff. %", "shaft " + u.Unit("kW"), "NPSHR " + u.Unit("m")}}
-	for _, p := range s.Points {
-		points.rows = append(points.rows, []string{u.Text(p.Flow, "m3/h", 0), u.Text(p.Head, "m", 2), u.Text(p.Low, "m", 2), u.Text(p.High, "m", 2),
-			u.Text(100*p.Efficiency, "", 1), u.Text(p.ShaftPower, "kW", 1), u.Text(p.NPSHRequired, "m", 2)})
-	}
+	points := pointsGrid(s, u)
 	lines = append(lines, points.lines("    ")...)
 	lines = append(lines, wrap("    ", "      ", "["+s.Grade.Source+"]")...)
 	if len(s.Trims) > 0 {
@@ -107,6 +84,46 @@ func sheetLines(s *study.PumpSheet, a *study.PumpSheets, u Units) []string {
 		}
 	}
 	return lines
+}
+
+// factLines says what the sheet tells of the pump.
+func factLines(s *study.PumpSheet, u Units) (lines []string) {
+	n := s.Numbers
+	for _, fact := range []string{
+		fmt.Sprintf("best efficiency %s %% at %s %s, %s %s", u.Text(100*n.BestEfficiency, "", 1), u.Text(n.BestFlow, "m3/h", 0), u.Unit("m3/h"), u.Text(n.BestHead, "m", 2), u.Unit("m")),
+		fmt.Sprintf("type number K %s (ISO 17769), specific speed nq %s (%s US), suction specific speed %s (%s US)", u.Text(n.TypeNumber, "", 3), u.Text(n.Specific, "", 1),
+			u.Text(n.SpecificUS, "", 0), u.Text(n.Suction, "", 0), u.Text(n.SuctionUS, "", 0)),
+		fmt.Sprintf("head against a shut valve %s %s", u.Text(s.ShutOff, "m", 2), u.Unit("m")),
+		fmt.Sprintf("greatest shaft power %s %s at %s %s; motor %s %s, wanted %s %s (margin of ISO 5199 on the power at best efficiency, from memory, verify)",
+			u.Text(s.Power.Greatest, "kW", 1), u.Unit("kW"), u.Text(s.Power.At, "m3/h", 0), u.Unit("m3/h"), u.Text(s.Power.Motor, "kW", 1), u.Unit("kW"), u.Text(s.Power.Wanted, "kW", 1), u.Unit("kW")),
+	} {
+		lines = append(lines, wrap("  ", "    ", fact)...)
+	}
+	for _, r := range s.Regions {
+		lines = append(lines, wrap("  ", "    ", fmt.Sprintf("%s region %s to %s %s [%s]", r.Name, u.Text(r.From, "m3/h", 0), u.Text(r.To, "m3/h", 0), u.Unit("m3/h"), r.Source))...)
+	}
+	return lines
+}
+
+// fitGrid says how each quantity was fitted.
+func fitGrid(s *study.PumpSheet, u Units) grid {
+	fits := grid{left: 1, head: []string{"quantity", "points", "from", "to", "curve", "residual", "left out"}}
+	for _, f := range s.Fits {
+		unit := u.Unit(f.Unit)
+		fits.rows = append(fits.rows, []string{f.Quantity, fmt.Sprint(f.Points), u.Text(f.Low, "m3/h", 0), u.Text(f.High, "m3/h", 0), f.Method,
+			u.Text(f.Residual, f.Unit, 3) + " " + unit, u.Text(f.LeaveOneOut, f.Unit, 3) + " " + unit})
+	}
+	return fits
+}
+
+// pointsGrid is the curve with its band.
+func pointsGrid(s *study.PumpSheet, u Units) grid {
+	points := grid{head: []string{u.Unit("m3/h"), "head " + u.Unit("m"), "lowest", "highest", "eff. %", "shaft " + u.Unit("kW"), "NPSHR " + u.Unit("m")}}
+	for _, p := range s.Points {
+		points.rows = append(points.rows, []string{u.Text(p.Flow, "m3/h", 0), u.Text(p.Head, "m", 2), u.Text(p.Low, "m", 2), u.Text(p.High, "m", 2),
+			u.Text(100*p.Efficiency, "", 1), u.Text(p.ShaftPower, "kW", 1), u.Text(p.NPSHRequired, "m", 2)})
+	}
+	return points
 }
 
 // WritePumpCSV writes the curves with their bands, a row a flow.

@@ -3,7 +3,6 @@ package report
 import (
 	"bytes"
 	"fmt"
-	"io"
 	"math"
 
 	"brinehead/cmd/brinehead/internal/study"
@@ -11,44 +10,25 @@ import (
 )
 
 // PumpFiles makes the table and plots of the sheets: pump.csv and, for each, its family of curves and its power.
-func PumpFiles(a *study.PumpSheets, u Units) ([]File, error) {
-	var table bytes.Buffer
-	if err := WritePumpCSV(&table, a, u); err != nil {
+func PumpFiles(a *study.PumpSheets, o Output) ([]File, error) {
+	u := o.Units
+	files, err := o.tables([]csvFile{{"pump.csv", func(b *bytes.Buffer) error { return WritePumpCSV(b, a, u) }}})
+	if err != nil {
 		return nil, err
 	}
-	files := []File{{"pump.csv", table.Bytes()}}
+	var all []plot
 	taken := map[string]bool{}
 	for i := range a.Sheets {
 		s := &a.Sheets[i]
 		stem := fileStem(s.Pumps, taken)
 		p := s.Picture(float64(a.Density))
 		family, power := familyChart(a, p, u), powerChart(a, p, u)
-		drawn, err := draw(stem+"-curve", family.Write)
-		if err != nil {
-			return nil, err
-		}
-		files = append(files, drawn...)
+		all = append(all, plot{stem + "-curve", s.Pumps + ": head over flow with the band of grade " + p.Grade + ", regions and even efficiencies", family.Write, nil})
 		if s.Power.Greatest.Known() {
-			if drawn, err = draw(stem+"-power", power.Write); err != nil {
-				return nil, err
-			}
-			files = append(files, drawn...)
+			all = append(all, plot{stem + "-power", s.Pumps + ": shaft power over flow beside the motor's rating", power.Write, nil})
 		}
 	}
-	return files, nil
-}
-
-// draw writes a plot in every format.
-func draw(stem string, write func(w io.Writer, format plots.Format, size plots.Size) error) ([]File, error) {
-	var files []File
-	for _, format := range []plots.Format{plots.SVG, plots.PNG} {
-		var b bytes.Buffer
-		if err := write(&b, format, plots.Size{}); err != nil {
-			return nil, fmt.Errorf("%s: %w", stem, err)
-		}
-		files = append(files, File{stem + "." + string(format), b.Bytes()})
-	}
-	return files, nil
+	return o.finish(files, all, pumpDocument(a, o, all))
 }
 
 func traceLine(t study.Trace) plots.Line { return line(t.Name, t.Flow, t.Value) }

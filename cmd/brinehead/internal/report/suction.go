@@ -184,16 +184,18 @@ func gaugeText(g study.GaugeReading, u Units) string {
 
 func strainerLines(a *study.Suction, u Units, title string) []string {
 	lines := wrap("", "  ", fmt.Sprintf("%s (drop in %s; the alarm keeps %.0f %% of the rise in hand)", title, u.Unit("bar"), 100*float64(a.Allowance)))
-	g := grid{left: 2, head: []string{"case", "strainer", "clean", "now", "limit", "blocked %", u.Unit("m3/h"), "alarm", "blocked %"}}
+	g := strainerGrid(a, u)
+	if len(g.rows) == 0 {
+		return append(lines, "  no strainer on any pump's suction, or no flow to tell it by")
+	}
+	return append(append(lines, g.lines("  ")...), strainerRemarks(a, u)...)
+}
+
+// strainerRemarks says what governs each strainer, and what the gauges then show.
+func strainerRemarks(a *study.Suction, u Units) []string {
 	var governs []string
 	for i, c := range a.Cases {
 		for _, s := range c.Strainers {
-			row := []string{fmt.Sprint(i + 1), s.Strainer, u.Text(s.Clean.Drop, "bar", 3), u.Text(s.Present.Drop, "bar", 3), u.Text(s.Limit.Drop, "bar", 3),
-				u.Text(100*s.Limit.Blockage, "", 1), u.Text(s.Limit.Flow, "m3/h", 0), u.Text(s.Alarm.Drop, "bar", 3), u.Text(100*s.Alarm.Blockage, "", 1)}
-			if s.Word != "" {
-				row[4] = s.Word
-			}
-			g.rows = append(g.rows, row)
 			text := fmt.Sprintf("case %d, %s: %s", i+1, s.Strainer, s.Governs)
 			for _, p := range s.Limit.Pumps {
 				text += fmt.Sprintf("; %s gauge at %s %s: %s", p.Pump, u.Text(p.Gauge.Elevation, "m", 2), u.Unit("m"), gaugeText(p.Gauge, u))
@@ -207,11 +209,23 @@ func strainerLines(a *study.Suction, u Units, title string) []string {
 			}
 		}
 	}
-	if len(g.rows) == 0 {
-		return append(lines, "  no strainer on any pump's suction, or no flow to tell it by")
+	return append(governs, wrap("  ", "    ", "Whether the basket itself bears the drop is not judged: ask its maker (baskets burst above some 1 bar: a strainer maker's page).")...)
+}
+
+// strainerGrid is every strainer in every case: drops clean, now, at the limit and at the alarm.
+func strainerGrid(a *study.Suction, u Units) grid {
+	g := grid{left: 2, head: []string{"case", "strainer", "clean", "now", "limit", "blocked %", u.Unit("m3/h"), "alarm", "blocked %"}}
+	for i, c := range a.Cases {
+		for _, s := range c.Strainers {
+			row := []string{fmt.Sprint(i + 1), s.Strainer, u.Text(s.Clean.Drop, "bar", 3), u.Text(s.Present.Drop, "bar", 3), u.Text(s.Limit.Drop, "bar", 3),
+				u.Text(100*s.Limit.Blockage, "", 1), u.Text(s.Limit.Flow, "m3/h", 0), u.Text(s.Alarm.Drop, "bar", 3), u.Text(100*s.Alarm.Blockage, "", 1)}
+			if s.Word != "" {
+				row[4] = s.Word
+			}
+			g.rows = append(g.rows, row)
+		}
 	}
-	lines = append(append(lines, g.lines("  ")...), governs...)
-	return append(lines, wrap("  ", "    ", "Whether the basket itself bears the drop is not judged: ask its maker (baskets burst above some 1 bar: a strainer maker's page).")...)
+	return g
 }
 
 func marginLimitLines(a *study.Suction, u Units) []string {

@@ -3,7 +3,6 @@ package report
 import (
 	"bytes"
 	"fmt"
-	"io"
 	"math"
 	"strings"
 
@@ -12,23 +11,18 @@ import (
 )
 
 // SuctionFiles makes the tables and plots of the dossier.
-func SuctionFiles(a *study.Suction, u Units) ([]File, error) {
-	var files []File
-	for _, t := range []struct {
-		name  string
-		write func(*bytes.Buffer) error
-	}{
+func SuctionFiles(a *study.Suction, o Output) ([]File, error) {
+	u := o.Units
+	files, err := o.tables([]csvFile{
 		{"suction.csv", func(b *bytes.Buffer) error { return WriteSuctionCSV(b, a, u) }},
 		{"npsh-lines.csv", func(b *bytes.Buffer) error { return WriteNPSHCSV(b, a, u) }},
 		{"strainers.csv", func(b *bytes.Buffer) error { return WriteStrainersCSV(b, a, u) }},
 		{"margin-limits.csv", func(b *bytes.Buffer) error { return WriteMarginLimitsCSV(b, a, u) }},
-	} {
-		var b bytes.Buffer
-		if err := t.write(&b); err != nil {
-			return nil, fmt.Errorf("%s: %w", t.name, err)
-		}
-		files = append(files, File{t.name, b.Bytes()})
+	})
+	if err != nil {
+		return nil, err
 	}
+	var all []plot
 	taken := map[string]bool{}
 	for i := range a.Cases {
 		c := &a.Cases[i]
@@ -39,18 +33,14 @@ func SuctionFiles(a *study.Suction, u Units) ([]File, error) {
 			if c.Draught.Known() {
 				subtitle = fmt.Sprintf("draught %s %s, ", u.Text(c.Draught, "m", 2), u.Unit("m")) + subtitle
 			}
-			drawn, err := suctionPlots(p, u, stem, title, subtitle)
-			if err != nil {
-				return nil, err
-			}
-			files = append(files, drawn...)
+			all = append(all, suctionPlots(p, u, stem, title, subtitle)...)
 		}
 	}
-	return files, nil
+	return o.finish(files, all, suctionDocument(a, o, all))
 }
 
 // suctionPlots draws the NPSH over flow, the margin over each strainer's blockage, and the profile of a pump's suction.
-func suctionPlots(p study.SuctionPicture, u Units, stem, title, subtitle string) (files []File, err error) {
+func suctionPlots(p study.SuctionPicture, u Units, stem, title, subtitle string) (all []plot) {
 	npsh := plots.NPSHChart{Title: title, Subtitle: subtitle, Units: plotUnits(u)}
 	for _, t := range p.Available {
 		t.Name = "available, " + t.Name
@@ -63,33 +53,25 @@ func suctionPlots(p study.SuctionPicture, u Units, stem, title, subtitle string)
 	for _, d := range p.Duty {
 		npsh.Duty = append(npsh.Duty, plots.Mark{Name: d.Name, Label: fmt.Sprintf("%s %s", u.Text(study.Figure(d.Value), "m", 1), u.Unit("m")), Flow: d.Flow, Value: d.Value})
 	}
-	type plot struct {
-		name  string
-		write func(io.Writer, plots.Format, plots.Size) error
-	}
-	all := []plot{{"npsh", npsh.Write}}
+	units := plotUnits(u).OrMetric()
+	all = append(all, plot{stem + "-npsh", title + ": NPSH over flow, available and required", npsh.Write,
+		seriesGrid("flow "+units.FlowName, "NPSH "+units.HeadName, units.FlowFactor, units.HeadFactor, append(pumpLines(npsh.Required), npsh.Available...)...)})
 	for _, s := range p.Strainers {
-		chart := marginChart(s, u, title, subtitle)
-		name := "blockage"
+		name := "-blockage"
 		if len(p.Strainers) > 1 {
-			name = fileStem(s.Strainer, map[string]bool{}) + "-" + name
+			name = "-" + fileStem(s.Strainer, map[string]bool{}) + name
 		}
 		if len(s.Margin.Flow) > 1 {
-			all = append(all, plot{name, chart.Write})
+			all = append(all, plot{stem + name, title + ": NPSH margin over the blocked share of " + s.Strainer, marginChart(s, u, title, subtitle).Write,
+				seriesGrid("blocked %", "margin "+units.HeadName, 100, units.HeadFactor, traceLine(s.Margin))})
 		}
 	}
 	if len(p.Profile.Pipe.Flow) > 1 {
 		profile := profileChart(p.Profile, u, title, subtitle)
-		all = append(all, plot{"profile", profile.Write})
+		all = append(all, plot{stem + "-profile", title + ": pipe height, hydraulic grade, absolute pressure and vapour pressure from the sea to the pump", profile.Write,
+			seriesGrid("way "+units.HeadName, "height or head "+units.HeadName, units.HeadFactor, units.HeadFactor, profile.Pipe, profile.Grade, profile.Absolute)})
 	}
-	for _, d := range all {
-		drawn, err := draw(stem+"-"+d.name, d.write)
-		if err != nil {
-			return nil, err
-		}
-		files = append(files, drawn...)
-	}
-	return files, nil
+	return all
 }
 
 func marginChart(s study.StrainerPicture, u Units, title, subtitle string) plots.MarginChart {

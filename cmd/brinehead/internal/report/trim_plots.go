@@ -3,49 +3,35 @@ package report
 import (
 	"bytes"
 	"fmt"
-	"io"
 
 	"brinehead/cmd/brinehead/internal/study"
 	"brinehead/curves/plots"
 )
 
 // TrimFiles makes the tables and plots of a trim.
-func TrimFiles(a *study.Trim, u Units) ([]File, error) {
-	var files []File
-	for _, t := range []struct {
-		name  string
-		write func(*bytes.Buffer) error
-	}{
+func TrimFiles(a *study.Trim, o Output) ([]File, error) {
+	u := o.Units
+	files, err := o.tables([]csvFile{
 		{"trim.csv", func(b *bytes.Buffer) error { return WriteTrimCSV(b, a, u) }},
 		{"trim-methods.csv", func(b *bytes.Buffer) error { return WriteTrimMethodsCSV(b, a, u) }},
 		{"side-effects.csv", func(b *bytes.Buffer) error { return WriteSideEffectsCSV(b, a, u) }},
 		{"other-ways.csv", func(b *bytes.Buffer) error { return WriteOptionsCSV(b, a, u) }},
-	} {
-		var b bytes.Buffer
-		if err := t.write(&b); err != nil {
-			return nil, fmt.Errorf("%s: %w", t.name, err)
-		}
-		files = append(files, File{t.name, b.Bytes()})
-	}
-	type plot struct {
-		name  string
-		write func(io.Writer, plots.Format, plots.Size) error
+	})
+	if err != nil {
+		return nil, err
 	}
 	var all []plot
 	if p := a.Picture(); p != nil {
-		all = append(all, plot{"trim-curve", trimChart(a, p, u).Write}, plot{"trim-power", trimPowerChart(a, p, u).Write})
+		curve, power := trimChart(a, p, u), trimPowerChart(a, p, u)
+		units := plotUnits(u).OrMetric()
+		all = append(all, plot{"trim-curve", "Head over flow now, after the first cut and in the end, with the band of the methods and the system curves", curve.Write,
+			seriesGrid("flow "+units.FlowName, "head "+units.HeadName, units.FlowFactor, units.HeadFactor, append([]plots.Line{curve.Own.Line}, curve.Family...)...)},
+			plot{"trim-power", "Shaft power over flow now, in the end, and at the lower speed that would do", power.Write, nil})
 	}
 	if a.EnergyUnknown == "" {
-		all = append(all, plot{"trim-energy", energyChart(a).Write})
+		all = append(all, plot{"trim-energy", "Energy of a year by way to the duty", energyChart(a).Write, nil})
 	}
-	for _, d := range all {
-		drawn, err := draw(d.name, d.write)
-		if err != nil {
-			return nil, err
-		}
-		files = append(files, drawn...)
-	}
-	return files, nil
+	return o.finish(files, all, trimDocument(a, o, all))
 }
 
 func trimChart(a *study.Trim, p *study.TrimPicture, u Units) plots.FamilyChart {

@@ -383,6 +383,14 @@ func feeds(s *Condition, point int) (runs []int) {
 	return runs
 }
 
+// NPSHLines takes the NPSH available of a pump apart, by its place among the condition's pumps; nil where it does not run on its curve.
+func (c *Condition) NPSHLines(pump int) []NPSHLine {
+	if c.solved == nil || !c.Pumps[pump].Running || !c.Pumps[pump].NPSHAvailable.Known() {
+		return nil
+	}
+	return npshLines(c, pump)
+}
+
 // npshLines takes a pump's NPSH available apart; the lines add up to it.
 func npshLines(s *Condition, pump int) []NPSHLine {
 	u := s.solved.Plant.Pumps[pump]

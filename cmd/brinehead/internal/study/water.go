@@ -70,3 +70,16 @@ func waterAt(o WaterOptions, celsius float64) (fluids.State, error) {
 	}
 	return fluids.Fresh(celsius, pascal)
 }
+
+// WaterMethods says in sentences what the properties of a kind of water rest on.
+func WaterMethods(kind string) (list []string) {
+	for _, k := range []fluids.Kind{fluids.FreshWater, fluids.SeaWater} {
+		if k.String() != kind {
+			continue
+		}
+		for _, s := range fluids.Sources(k) {
+			list = append(list, fmt.Sprintf("%s water, %s: %s, %s (%s)", kind, s.Property, s.Publication, s.Method, s.Uncertainty))
+		}
+	}
+	return list
+}

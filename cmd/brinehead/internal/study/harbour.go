@@ -129,6 +129,7 @@ func (a *Comparison) harbourTest(after *job.Job, asked []string, grade Grade) (H
 	if a.after == nil {
 		return t, nil
 	}
+	heads := scaledCurves{}
 	for i := range a.after.Conditions {
 		c := &a.after.Conditions[i]
 		if len(asked) > 0 && !holds(asked, c.Condition) {
@@ -136,7 +137,7 @@ func (a *Comparison) harbourTest(after *job.Job, asked []string, grade Grade) (H
 		}
 		band := TestBand{Condition: c.Condition}
 		for _, corner := range []Corner{{Resistance: "high", PumpHead: "low"}, {Resistance: "high", PumpHead: "high"}, {Resistance: "low", PumpHead: "low"}, {Resistance: "low", PumpHead: "high"}} {
-			tolerances, err := corner.solve(after, c, grade)
+			tolerances, err := corner.solve(after, c, grade, heads)
 			if err != nil {
 				return t, err
 			}
@@ -154,7 +155,7 @@ func (a *Comparison) harbourTest(after *job.Job, asked []string, grade Grade) (H
 }
 
 // solve builds the condition anew with its inputs at the corner, and solves it. The error is that of building.
-func (k *Corner) solve(after *job.Job, best *Condition, grade Grade) ([]Tolerance, error) {
+func (k *Corner) solve(after *job.Job, best *Condition, grade Grade, heads scaledCurves) ([]Tolerance, error) {
 	built, err := after.Build(best.Condition)
 	if err != nil {
 		return nil, err
@@ -182,7 +183,7 @@ func (k *Corner) solve(after *job.Job, best *Condition, grade Grade) ([]Toleranc
 		u := &built.Pumps[i]
 		t := Tolerance{On: u.Name, What: "head", Unit: "-", Low: 1 - grade.Below, Best: 1, High: 1 + grade.Above, Source: grade.Source}
 		all = append(all, t)
-		if u.Curve, err = withHead(u.Curve, side(t, k.PumpHead == "high")); err != nil {
+		if u.Curve, err = heads.of(u.Curve, side(t, k.PumpHead == "high")); err != nil {
 			return nil, err
 		}
 	}
@@ -276,13 +277,28 @@ func scaleLoss(f *hydraulics.Fitting, factor float64) {
 	f.Kv /= math.Sqrt(factor)
 }
 
-// withHead is the curve with every digitised head multiplied by a factor.
-func withHead(c *pumps.Curve, factor float64) (*pumps.Curve, error) {
-	points := slices.Clone(c.Points)
-	for i := range points {
-		points[i].Head *= factor
+// scaledCurves keeps curves whose every digitised head is multiplied by a factor, each fitted once.
+type scaledCurves map[scaledCurve]*pumps.Curve
+
+type scaledCurve struct {
+	curve  *pumps.Curve
+	factor float64
+}
+
+func (s scaledCurves) of(c *pumps.Curve, factor float64) (*pumps.Curve, error) {
+	key := scaledCurve{c, factor}
+	if s[key] == nil {
+		points := slices.Clone(c.Points)
+		for i := range points {
+			points[i].Head *= factor
+		}
+		scaled, err := pumps.NewCurve(c.Impeller, c.Speed, points)
+		if err != nil {
+			return nil, err
+		}
+		s[key] = scaled
 	}
-	return pumps.NewCurve(c.Impeller, c.Speed, points)
+	return s[key], nil
 }
 
 // readings fills in what to expect.

@@ -76,7 +76,7 @@ func newRoot(s streams) *cobra.Command {
 	root.SetFlagErrorFunc(func(c *cobra.Command, err error) error {
 		return fmt.Errorf("%w\n\thint: %s --help lists the flags", err, c.CommandPath())
 	})
-	root.AddCommand(newCatalogue(s), newCheck(s), newCompare(s), newWater(s))
+	root.AddCommand(newCatalogue(s), newCheck(s), newCompare(s), newReadings(s), newWater(s))
 	return root
 }
 

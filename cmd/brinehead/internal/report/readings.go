@@ -99,7 +99,11 @@ func pumpReadingLines(p study.PumpReadings, u Units) []string {
 		for _, e := range p.Estimates {
 			g.rows = append(g.rows, []string{e.By, u.Text(e.Flow, "m3/h", 0), u.Text(e.Low, "m3/h", 0), u.Text(e.High, "m3/h", 0)})
 		}
-		g.rows = append(g.rows, []string{"weighted mean", u.Text(p.Mean.Value, "m3/h", 0), u.Text(p.Mean.Value-p.Mean.Uncertainty, "m3/h", 0), u.Text(p.Mean.Value+p.Mean.Uncertainty, "m3/h", 0)})
+		mean := "weighted mean"
+		if p.Agreement.Outlier != "" {
+			mean = "weighted mean of the others"
+		}
+		g.rows = append(g.rows, []string{mean, u.Text(p.Mean.Value, "m3/h", 0), u.Text(p.Mean.Value-p.Mean.Uncertainty, "m3/h", 0), u.Text(p.Mean.Value+p.Mean.Uncertainty, "m3/h", 0)})
 		lines = append(lines, g.lines("    ")...)
 		for _, e := range p.Estimates {
 			if e.Note != "" {

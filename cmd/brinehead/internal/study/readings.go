@@ -55,7 +55,7 @@ type PumpReadings struct {
 	Calculated Pump           `json:"calculated"`
 	Head       *HeadReading   `json:"head"` // nil without both gauges
 	Estimates  []FlowEstimate `json:"flows"`
-	Mean       Measured       `json:"mean_flow_m3h"` // weighted by the inverse squares of the uncertainties
+	Mean       Measured       `json:"mean_flow_m3h"` // weighted by the inverse squares of the uncertainties; without an outlier, and none of readings that disagree
 	Agreement  Agreement      `json:"agreement"`
 	Curve      CurveVerdict   `json:"curve"`
 	ShaftPower Measured       `json:"shaft_power_kW"` // as measured; not known where nothing measures it
@@ -667,8 +667,8 @@ func (b *bench) share(pump int, u curves.Pump, run int) (share float64, note str
 		return 0, "", false
 	}
 	share = c.solved.PumpFlows[pump] / c.solved.RunFlows[run]
-	if math.Abs(share-1) < 1e-6 {
-		return 1, "", true
+	if math.Abs(share-1) < 0.001 { // no meter tells that apart
+		return share, "", true
 	}
 	return share, fmt.Sprintf("%s carries %.3g times the flow of the pump, as calculated", r.Name, 1/share), true
 }
@@ -692,14 +692,15 @@ func agree(estimates []FlowEstimate) (Measured, Agreement) {
 		return mean, a
 	}
 	a.Verdict = NotMet
+	mean = Measured{unknown, unknown}
 	least := math.Inf(1)
 	for i := range weighed { // of two that disagree nothing says which is wrong
 		rest := slices.Delete(slices.Clone(weighed), i, i+1)
 		if len(rest) < 2 {
 			break
 		}
-		if _, without := weightedMean(rest); without < least && without <= (distuv.ChiSquared{K: float64(len(rest) - 1)}.Quantile(0.95)) {
-			least, a.Outlier = without, weighed[i].By
+		if others, without := weightedMean(rest); without < least && without <= (distuv.ChiSquared{K: float64(len(rest) - 1)}.Quantile(0.95)) {
+			mean, least, a.Outlier = others, without, weighed[i].By
 		}
 	}
 	return mean, a
@@ -751,7 +752,7 @@ func (v *CurveVerdict) judge(u curves.Pump, h *HeadReading, estimates []FlowEsti
 	case departure-band >= -float64(grade.Below) && departure+band <= float64(grade.Above):
 		v.Verdict, v.Reason = Met, words
 	case departure+band < -float64(grade.Below) || departure-band > float64(grade.Above):
-		v.Verdict, v.Reason = NotMet, words
+		v.Verdict, v.Reason = NotMet, words+": the pump, or what measures its head and flow"
 	default:
 		v.Reason = words + ": the band straddles the limit"
 	}

@@ -266,3 +266,59 @@ func TestReadingsRefuses(t *testing.T) {
 		}
 	}
 }
+
+// Readings at the edges: a band that runs off the curve has one bound and no weight; a run written against its flow counts
+// backwards; a band over the lower limit judges nothing; a measured speed moves the curve; a meter in a common line is shared out
+// as calculated.
+func TestReadingsAtTheEdges(t *testing.T) {
+	head := "condition,quantity,on,value,unit,uncertainty\n"
+	one := func(rows string, change ...func(map[string]string)) study.PumpReadings {
+		a, _ := readingsJSON(t, writeJob(t, gaugeJob("20", head+rows, change...)))
+		return a.Conditions[0].Pumps[0]
+	}
+	// 7.5 m +/-0.7 m, the curve ends at 7 m.
+	p := one("ballast,suction gauge,P1,0.2,bar,0.05\nballast,discharge gauge,P1,0.836,bar,0.05\n")
+	if e := p.Estimates[0]; !e.Flow.Known() || !(e.Low < e.Flow) || e.High.Known() || p.Mean.Value.Known() || !strings.Contains(e.Note, "has no weight") {
+		t.Errorf("%+v, mean %+v", e, p.Mean)
+	}
+	against := func(tables map[string]string) {
+		tables["runs.csv"] = strings.ReplaceAll(tables["runs.csv"], "DISCHARGE,D,OUT,", "DISCHARGE,OUT,D,")
+	}
+	if e := one("ballast,flow,DISCHARGE,-200,m3/h,6\n", against).Estimates[0]; e.Flow != 200 || e.Low != 194 || e.High != 206 {
+		t.Errorf("%+v", e)
+	}
+	meters := "ballast,flow,SUCTION,200,m3/h,6\nballast,flow,DISCHARGE,203,m3/h,6\n"
+	p = one("ballast,suction gauge,P1,0.2,bar,0.03\nballast,discharge gauge,P1,1.60,bar,0.03\n" + meters)
+	if d := p.Curve.Departure; p.Curve.Verdict != study.NotJudged || !(d.Value > -0.05 && d.Value-d.Uncertainty < -0.05) {
+		t.Errorf("%+v", p.Curve)
+	}
+	// By affinity: at 1400 of 1450 rpm flow goes with the ratio, head with its square.
+	const ratio = 1400.0 / 1450
+	speeds := func(tables map[string]string) {
+		tables["pumps.csv"] = "pump,from,to,curve,speed [rpm]\nP1,S,D,C1,1450\n"
+		tables["pump_curves.csv"] = strings.NewReplacer("curve,", "curve,speed [rpm],", "C1,", "C1,1450,").Replace(tables["pump_curves.csv"])
+	}
+	gauges := "ballast,suction gauge,P1,0.2,bar,0.01\nballast,discharge gauge,P1,1.6,bar,0.01\n"
+	full := one(gauges+"ballast,flow,P1,200,m3/h,6\n", speeds).Curve.CurveHead
+	slow := one(gauges+fmt.Sprintf("ballast,flow,P1,%.9f,m3/h,6\nballast,speed,P1,1400,rpm,5\n", 200*ratio), speeds).Curve.CurveHead
+	if !(math.Abs(float64(slow-full*ratio*ratio)) < 1e-6) {
+		t.Errorf("%g m at 1450 rpm, %g m at 1400", float64(full), float64(slow))
+	}
+	if len(one("ballast,flow,P1,200,m3/h,6\nballast,speed,P1,1400,rpm,5\n").Estimates) != 1 {
+		t.Error("a speed without a curve that has one is no flow")
+	}
+
+	change := writeJob(t, map[string]string{"readings.csv": head + "\"ballast, tropics\",flow,LOW SUCTION,900,m3/h,20\n\"ballast, tropics\",flow,COOLER 2,400,m3/h,20\n\"ballast, tropics\",flow,HIGH SUCTION,1,m3/h,1\n"})
+	a, _ := readingsJSON(t, seawater, "--change", change)
+	check, _ := checkJSON(t, seawater, "--condition", "ballast, tropics")
+	c := check.Conditions[0]
+	for i, p := range a.Conditions[0].Pumps {
+		share := float64(c.Pumps[i].Flow / runNamed(t, c, "LOW SUCTION").Flow)
+		if len(p.Estimates) != 1+i || !(math.Abs(float64(p.Estimates[0].Flow)-900*share) < 1e-4) || !strings.Contains(p.Estimates[0].Note, "LOW SUCTION carries 2 times the flow of the pump, as calculated") {
+			t.Errorf("%s: %+v, its share %g", p.Pump, p.Estimates, share)
+		}
+	}
+	if unused := a.Conditions[0].Unused; len(unused) != 1 || unused[0] != "flow of HIGH SUCTION: it is on no running pump, nor on its way" {
+		t.Errorf("%q", unused)
+	}
+}

@@ -245,8 +245,8 @@ func TestOutFolder(t *testing.T) {
 		return files
 	}
 	first, second := read(), read()
-	if len(first) != 4+7*6 {
-		t.Errorf("%d files, want 4 tables and 6 plots of each of 7 conditions", len(first))
+	if len(first) != 4+7*6+2 {
+		t.Errorf("%d files, want 4 tables, 6 plots of each of 7 conditions, and the report twice", len(first))
 	}
 	for name, content := range first {
 		if content == "" || content != second[name] {

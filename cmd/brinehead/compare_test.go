@@ -205,6 +205,7 @@ func TestCompareAddsUp(t *testing.T) {
 	check(seawater, fineStrainer)
 	check(seawater, pipeRenewal)
 	check(freshwater, copyTable(t, freshwater, "runs.csv", nil))
+	check(copyJob(t, seawater, [3]string{"runs.csv", "OVERBOARD LINE,COOLERS OUT,OVERBOARD,", "OVERBOARD LINE,OVERBOARD,COOLERS OUT,"}), pipeRenewal) // written against its flow
 	const seed = 20261201
 	t.Logf("seed %d", seed)
 	random := rand.New(rand.NewPCG(seed, 1))

@@ -14,9 +14,8 @@ import (
 
 func newMan() *cobra.Command {
 	return &cobra.Command{
-		Use:     "man DIR",
-		Short:   "Writes the manual pages, a page a command",
-		Example: "  $ man ./manual/brinehead-check.1",
+		Use:   "man DIR",
+		Short: "Writes the manual pages, a page a command",
 		Args: func(c *cobra.Command, args []string) error {
 			if len(args) != 1 {
 				return fmt.Errorf("man needs the folder to write into, and nothing else: %s", c.UseLine())

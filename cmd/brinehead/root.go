@@ -79,7 +79,7 @@ func newRoot(s streams) *cobra.Command {
 	root.SetFlagErrorFunc(func(c *cobra.Command, err error) error {
 		return fmt.Errorf("%w\n\thint: %s --help lists the flags", err, c.CommandPath())
 	})
-	root.AddCommand(newCatalogue(s), newCheck(s), newCompare(s), newMan(), newPump(s), newSuction(s), newTrim(s), newWater(s))
+	root.AddCommand(newCatalogue(s), newCheck(s), newCompare(s), newMan(), newPump(s), newReadings(s), newSuction(s), newTrim(s), newWater(s))
 	return root
 }
 

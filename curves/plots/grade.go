@@ -62,9 +62,7 @@ func (c GradeChart) extent() (low, high float64) {
 func (c GradeChart) draw(page draw.Canvas) {
 	frame := draw.Crop(page, vg.Points(34), -vg.Points(24), vg.Points(42), 0)
 	low, high := c.extent()
-	ticks, _, high := steps(0, high)
-	step := ticks[1].Value
-	low = step * math.Floor(low/step+1e-9)
+	low, high, step, label := span(low, high)
 	x := func(v float64) vg.Length {
 		return frame.Min.X + vg.Length(v/float64(len(c.Points)-1))*frame.Size().X
 	}
@@ -75,7 +73,7 @@ func (c GradeChart) draw(page draw.Canvas) {
 	tick.XAlign, tick.YAlign = text.XRight, text.YCenter
 	for v := low; v <= high+step/2; v += step {
 		frame.StrokeLine2(draw.LineStyle{Color: gridColour, Width: vg.Points(0.5)}, frame.Min.X, y(v), frame.Max.X, y(v))
-		page.FillText(tick, vg.Point{X: frame.Min.X - vg.Points(5), Y: y(v)}, decimalLike(ticks[1].Label, v))
+		page.FillText(tick, vg.Point{X: frame.Min.X - vg.Points(5), Y: y(v)}, decimalLike(label, v))
 	}
 	axis := writing(10)
 	axis.XAlign, axis.YAlign, axis.Rotation = text.XCenter, text.YTop, math.Pi/2
@@ -100,14 +98,33 @@ func (c GradeChart) draw(page draw.Canvas) {
 		p.stroke(s)
 	}
 	for k, name := range c.Pumps {
-		if name != "" && k < len(c.After.Start) {
+		if name != "" && k < min(len(c.After.Start), len(c.After.End)) {
 			middle := (c.After.Start[k] + c.After.End[k]) / 2 * c.Units.HeadFactor
 			p.labelAt(printable(name), vg.Point{X: x(float64(k) + 0.5), Y: y(middle)}, inkColour)
 		}
 	}
-	for _, s := range strokes {
+	p.labelAlong(strokes[0])
+	if before, after := strokes[1], strokes[len(strokes)-1]; len(strokes) == 3 && len(before.points) == len(after.points) {
+		k := widestGap(before.points, after.points) // the names stand where the lines are farthest apart
+		for _, s := range strokes[1:] {
+			p.labelAt(s.name, vg.Point{X: x(s.points[k].X), Y: y(s.points[k].Y)}, s.colour)
+		}
+		return
+	}
+	for _, s := range strokes[1:] {
 		p.labelAlong(s)
 	}
+}
+
+// widestGap returns where two lines with points at the same places are farthest apart.
+func widestGap(a, b plotter.XYs) (at int) {
+	widest := 0.0
+	for k := range a {
+		if gap := math.Abs(a[k].Y - b[k].Y); gap > widest {
+			widest, at = gap, k
+		}
+	}
+	return at
 }
 
 func stations(count int) (at []float64) {

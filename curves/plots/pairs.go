@@ -67,9 +67,7 @@ func (c PairChart) draw(page draw.Canvas) {
 	}
 	axis := draw.Crop(page, left+vg.Points(8), -right-vg.Points(10), vg.Points(34), -vg.Points(20))
 	low, high := c.extent()
-	ticks, _, high := steps(0, high)
-	step := ticks[1].Value
-	low = step * math.Floor(low/step+0.02) // a trifle below 0 needs no step of its own
+	low, high, step, label := span(low, high)
 	x := func(v float64) vg.Length {
 		return axis.Min.X + vg.Length((v-low)/(high-low))*axis.Size().X
 	}
@@ -78,15 +76,15 @@ func (c PairChart) draw(page draw.Canvas) {
 	heading := writing(rowFont)
 	heading.YAlign = text.YCenter
 	page.FillText(heading, vg.Point{X: axis.Max.X + vg.Points(8), Y: page.Max.Y - vg.Points(8) + textRise}, "change")
-	label := writing(9)
-	label.XAlign, label.YAlign = text.XCenter, text.YTop
+	tick := writing(9)
+	tick.XAlign, tick.YAlign = text.XCenter, text.YTop
 	for v := low; v <= high+step/2; v += step {
 		page.StrokeLine2(draw.LineStyle{Color: gridColour, Width: vg.Points(0.5)}, x(v), axis.Min.Y, x(v), axis.Max.Y)
-		page.FillText(label, vg.Point{X: x(v), Y: axis.Min.Y - vg.Points(4)}, decimalLike(ticks[1].Label, v))
+		page.FillText(tick, vg.Point{X: x(v), Y: axis.Min.Y - vg.Points(4)}, decimalLike(label, v))
 	}
 	page.StrokeLine2(draw.LineStyle{Color: inkColour, Width: vg.Points(0.6)}, x(low), axis.Min.Y, x(high), axis.Min.Y)
 	page.StrokeLine2(draw.LineStyle{Color: boundColour, Width: vg.Points(0.6)}, x(0), axis.Min.Y, x(0), axis.Max.Y)
-	page.FillText(label, vg.Point{X: (axis.Min.X + axis.Max.X) / 2, Y: axis.Min.Y - vg.Points(19)}, printable(c.Quantity))
+	page.FillText(tick, vg.Point{X: (axis.Min.X + axis.Max.X) / 2, Y: axis.Min.Y - vg.Points(19)}, printable(c.Quantity))
 	y, group := axis.Max.Y-rowHeight/2, ""
 	for _, r := range c.Rows {
 		if r.Group != group {
@@ -99,6 +97,14 @@ func (c PairChart) draw(page draw.Canvas) {
 		c.row(p, r, x, y, page.Min.X, axis.Max.X+vg.Points(8), axis.Min.X+vg.Points(6))
 		y -= rowHeight
 	}
+}
+
+// span is an axis of round steps over a range that holds 0, with the label of its first step.
+func span(least, greatest float64) (low, high, step float64, label string) {
+	ticks, _, _ := steps(0, math.Max(greatest, -least))
+	step, label = ticks[1].Value, ticks[1].Label
+	const trifle = 0.02 // of a step, that needs no step of its own
+	return step * math.Floor(least/step+trifle), step * math.Ceil(greatest/step-trifle), step, label
 }
 
 // decimalLike writes a tick with as many decimals as another has.

@@ -171,7 +171,7 @@ func marginGrid(a *study.Suction, u Units) grid {
 }
 
 // gaugeText says what a suction gauge shows, as a vacuum too where it stands below the atmosphere.
-func gaugeText(g study.GaugeReading, u Units) string {
+func gaugeText(g study.SuctionGauge, u Units) string {
 	if g.Boils {
 		return "boils"
 	}

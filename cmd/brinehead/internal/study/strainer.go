@@ -40,7 +40,7 @@ type StrainerPumpLine struct {
 	Pump   string       `json:"pump"`
 	Flow   Figure       `json:"flow_m3h"`
 	Margin Figure       `json:"npsh_margin_m"`
-	Gauge  GaugeReading `json:"suction_gauge"`
+	Gauge  SuctionGauge `json:"suction_gauge"`
 }
 
 // blockedLimits are the limits that a strainer may break by blocking. A minimum velocity counts where limits.csv gives it: the default

@@ -59,7 +59,7 @@ type PumpSuction struct {
 	Rules     []Finding     `json:"rules"` // the limits on its margin and ratio
 	Verdict   Verdict       `json:"verdict"`
 	Lines     []NPSHLine    `json:"lines"` // that add up to the NPSH available
-	Gauge     GaugeReading  `json:"suction_gauge"`
+	Gauge     SuctionGauge  `json:"suction_gauge"`
 	Limits    []MarginLimit `json:"limits"`
 	Starting  []StartEffect `json:"starting"`
 	Vacuum    []string      `json:"below_atmosphere"` // runs of the suction that stand below the atmosphere
@@ -72,8 +72,8 @@ type NPSHLine struct {
 	Head Figure `json:"head_m"`
 }
 
-// GaugeReading is what a suction gauge shows.
-type GaugeReading struct {
+// SuctionGauge is what a suction gauge shows.
+type SuctionGauge struct {
 	Elevation Figure `json:"elevation_m"`
 	Pressure  Figure `json:"gauge_pressure_bar"`
 	Vacuum    Figure `json:"vacuum_mmHg"` // above 0 below the atmosphere, 0 above it
@@ -303,7 +303,7 @@ func keeps(rules []Finding) Verdict {
 func (c *SuctionCase) pump(j *job.Job, s *Condition, i int, solve func(*job.Case) *Condition) PumpSuction {
 	p := s.Pumps[i]
 	out := PumpSuction{Pump: p.Pump, Flow: p.Flow, Available: p.NPSHAvailable, Required: p.NPSHRequired, High: p.NPSHRequiredHigh, Margin: p.NPSHMargin,
-		Ratio: p.NPSHAvailable / p.NPSHRequired, Rules: npshRules(s, p.Pump), Gauge: GaugeReading{unknown, unknown, unknown, false}}
+		Ratio: p.NPSHAvailable / p.NPSHRequired, Rules: npshRules(s, p.Pump), Gauge: SuctionGauge{unknown, unknown, unknown, false}}
 	out.Verdict = keeps(out.Rules)
 	if !p.Flow.Known() {
 		return out
@@ -437,16 +437,16 @@ func npshLines(s *Condition, pump int) []NPSHLine {
 }
 
 // suctionGauge returns what the suction gauge of a pump shows: at its own elevation, or at the pump's datum where pumps.csv gives none.
-func suctionGauge(j *job.Job, s *Condition, pump int) GaugeReading {
+func suctionGauge(j *job.Job, s *Condition, pump int) SuctionGauge {
 	u := s.solved.Plant.Pumps[pump]
 	elevation := j.Tables.Pumps[pump].SuctionGauge.Or(u.Datum)
 	weight := s.solved.Water.Density * fluids.Gravity
 	pressure := s.solved.GaugePressure(u.From) + (s.built.Elevations[u.From]-elevation)*weight
 	const millimetreOfMercury = 133.322387415 // Pa, conventional
 	if s.solved.Atmosphere+pressure < s.solved.Water.VapourPressure {
-		return GaugeReading{Figure(elevation), unknown, unknown, true}
+		return SuctionGauge{Figure(elevation), unknown, unknown, true}
 	}
-	return GaugeReading{Figure(elevation), Figure(pressure / 1e5), Figure(math.Max(-pressure, 0) / millimetreOfMercury), false}
+	return SuctionGauge{Figure(elevation), Figure(pressure / 1e5), Figure(math.Max(-pressure, 0) / millimetreOfMercury), false}
 }
 
 // starting starts each pump that stands idle and shares the suction, and sees what is left of the margin.

@@ -281,6 +281,21 @@ func compareInside(t *testing.T, folder, change string) *study.Comparison {
 	return a
 }
 
+// Pumps that no longer do the same have plots of their own, each with what they did together before.
+func TestCompareFilesOfUnlikePumps(t *testing.T) {
+	worn := writeJob(t, map[string]string{"pumps.csv": "pump,from,to,curve,datum [m],impeller [mm],speed [rpm],motor [kW],wear [%]\nP1,SUCTION 1,DELIVERY 1,SWP-400,2.5,318,1480,45,8\nP2,SUCTION 2,DELIVERY 2,SWP-400,2.5,318,1480,45,0\n"})
+	folder := filepath.Join(t.TempDir(), "out")
+	if code, _, stderr := brinehead("compare", seawater, worn, "--condition", "ballast, tropics", "--out", folder); code > exitNotMet || stderr != "" {
+		t.Fatalf("exit code %d, %s", code, stderr)
+	}
+	for _, name := range []string{"systems-p1", "systems-p2", "losses-p1", "losses-p2", "grade-p1", "grade-p2"} {
+		svg, err := os.ReadFile(filepath.Join(folder, "ballast-tropics-"+name+".svg"))
+		if err != nil || !strings.Contains(string(svg), "before") {
+			t.Errorf("%s: %v", name, err)
+		}
+	}
+}
+
 // What stands on one side only is named and never taken for 0: a run, a pump, a fitting, a condition, a limit.
 func TestCompareOneSided(t *testing.T) {
 	tables := lift("", "")

@@ -281,6 +281,21 @@ func compareInside(t *testing.T, folder, change string) *study.Comparison {
 	return a
 }
 
+// Pumps that no longer do the same have plots of their own, each with what they did together before.
+func TestCompareFilesOfUnlikePumps(t *testing.T) {
+	worn := writeJob(t, map[string]string{"pumps.csv": "pump,from,to,curve,datum [m],impeller [mm],speed [rpm],motor [kW],wear [%]\nP1,SUCTION 1,DELIVERY 1,SWP-400,2.5,318,1480,45,8\nP2,SUCTION 2,DELIVERY 2,SWP-400,2.5,318,1480,45,0\n"})
+	folder := filepath.Join(t.TempDir(), "out")
+	if code, _, stderr := brinehead("compare", seawater, worn, "--condition", "ballast, tropics", "--out", folder); code > exitNotMet || stderr != "" {
+		t.Fatalf("exit code %d, %s", code, stderr)
+	}
+	for _, name := range []string{"systems-p1", "systems-p2", "losses-p1", "losses-p2", "grade-p1", "grade-p2"} {
+		svg, err := os.ReadFile(filepath.Join(folder, "ballast-tropics-"+name+".svg"))
+		if err != nil || !strings.Contains(string(svg), "before") {
+			t.Errorf("%s: %v", name, err)
+		}
+	}
+}
+
 // What stands on one side only is named and never taken for 0: a run, a pump, a fitting, a condition, a limit.
 func TestCompareOneSided(t *testing.T) {
 	tables := lift("", "")
@@ -346,7 +361,7 @@ func TestCompareOneSided(t *testing.T) {
 		}
 	}
 	_, out, _ = brinehead("compare", before, job)
-	for _, want := range []string{"Only before the change, and not compared: \"loaded\".\n", "  ballast: minimum flow of P1: not met before; the limit no longer applies\n", "  runs: RISER: removed: run RISER,"} {
+	for _, want := range []string{"Only before the change, and not compared: \"loaded\".\n", "  ballast: not met before, and no longer applies: minimum flow of P1\n", "  runs: RISER: removed: run RISER,"} {
 		if !strings.Contains(out, want) {
 			t.Errorf("no\n%s\nin\n%s", want, out)
 		}
@@ -440,7 +455,7 @@ func TestCompareRefuses(t *testing.T) {
 		{[]string{seawater, fineStrainer, "--grade", "4B"}, `acceptance grade: found "4B", want one of 1U, 1E, 1B, 2B, 2U, 3B`},
 		{[]string{seawater, fineStrainer, "--change", pipeRenewal}, "unknown flag: --change"},
 		{[]string{seawater, fineStrainer, "--format", "xml"}, `format: found "xml"`},
-		{[]string{seawater, fineStrainer, "--out", fineStrainer}, "results are not written into a folder of tables"},
+		{[]string{seawater, fineStrainer, "--condition", "loaded, tropics", "--out", fineStrainer}, "results are not written into a folder of tables"},
 	} {
 		code, out, stderr := brinehead(append([]string{"compare"}, c.args...)...)
 		if code != exitInput || out != "" || !strings.Contains(stderr, c.want) {
@@ -482,6 +497,58 @@ func TestCompareFiles(t *testing.T) {
 			if info, err := os.Stat(filepath.Join(folder, "ballast-tropics-"+name+"."+ending)); err != nil || info.Size() < 1000 {
 				t.Errorf("%s.%s: %v", name, ending, err)
 			}
+		}
+	}
+}
+
+// A condition that has no solution after the change has no figures there, in words and as null, and every limit not judged.
+func TestCompareWithoutSolution(t *testing.T) {
+	shut := copyTable(t, seawater, "conditions.csv", func(column, cell string) string {
+		if column == "LOW SUCTION state" || column == "HIGH SUCTION state" {
+			return "shut"
+		}
+		return cell
+	})
+	runs, err := os.ReadFile(filepath.Join(seawater, "runs.csv"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	text := strings.Replace(string(runs), "material,high point [m]", "material,state,high point [m]", 1)
+	text = strings.ReplaceAll(text, "copper-nickel,", "copper-nickel,,")
+	text = strings.Replace(text, "DN350,90/10 copper-nickel,,7.3,", "DN350,90/10 copper-nickel,shut,7.3,", 1)
+	if err := os.WriteFile(filepath.Join(shut, "runs.csv"), []byte(text), 0o644); err != nil {
+		t.Fatal(err)
+	}
+	out := filepath.Join(t.TempDir(), "out")
+	a, code := compareJSON(t, seawater, shut, "--condition", "ballast, tropics", "--out", out)
+	c := compared(t, a, "ballast, tropics")
+	if code != exitNotMet || !strings.HasPrefix(c.Unknown.After, "no solution: ") || c.Unknown.Before != "" {
+		t.Errorf("exit code %d, %+v", code, c.Unknown)
+	}
+	for _, p := range c.Pumps {
+		if p.State != (study.Sides{Before: "running", After: "no solution"}) || !p.Flow.Before.Known() || p.Flow.After.Known() || p.Flow.Difference.Known() {
+			t.Errorf("%+v", p)
+		}
+	}
+	for _, p := range c.Paths {
+		if p.Reason != "before: running, after: no solution" || len(p.Elements) != 0 {
+			t.Errorf("%+v", p)
+		}
+	}
+	for _, l := range c.Limits {
+		if l.Limit != "minimum immersion" && l.After == study.Met {
+			t.Errorf("%+v", l)
+		}
+	}
+	for _, b := range a.Test.Conditions {
+		if len(b.Readings) != 0 {
+			t.Errorf("%+v", b.Readings)
+		}
+	}
+	_, text, _ = brinehead("compare", seawater, shut, "--condition", "ballast, tropics")
+	for _, want := range []string{"  P1    410.7  no solution  -   23.37      -  32.4      -      6.98      -\n", "  Not known after the change: no solution: ", "    nothing to read: no solution\n"} {
+		if !strings.Contains(text, want) {
+			t.Errorf("no\n%s\nin\n%s", want, text)
 		}
 	}
 }

@@ -75,12 +75,10 @@ func quotedList(names []string) string { return `"` + strings.Join(names, `", "`
 
 // limitLines lists the limits that are not met or not judged after the change, with what they were before, and those gained.
 func limitLines(a *study.Comparison, u Units) []string {
-	var notMet, gained, dropped []string
+	var notMet, gained []string
 	for _, l := range a.Limits() {
 		name := fmt.Sprintf("%s: %s of %s: ", l.Condition, l.Limit, l.On)
 		switch {
-		case l.Outcome == study.DroppedOff:
-			dropped = append(dropped, wrap("  ", "    ", fmt.Sprintf("%s%s before; the limit no longer applies", name, l.Before))...)
 		case l.After == study.NotMet:
 			notMet = append(notMet, wrap("  ", "    ", name+wasBefore(l, u)+"; now "+reason(*l.Findings[1], u))...)
 		case l.Outcome == study.Gained && l.Before == study.NotMet:
@@ -91,6 +89,9 @@ func limitLines(a *study.Comparison, u Units) []string {
 		return "not judged before (" + l.Reason.Before + "), now met", l.Outcome == study.Gained && l.Before == study.NotJudged
 	})...)
 	notJudged := notJudgedAfter(a)
+	dropped := grouped(a, func(l study.ConditionLimit) (group string, of bool) {
+		return string(l.Before) + " before, and no longer applies", l.Outcome == study.DroppedOff
+	})
 	var lines []string
 	for _, section := range []struct {
 		title string
@@ -218,9 +219,10 @@ func worstLines(a *study.Comparison, u Units) []string {
 	}
 	lines := []string{"", "THE WORST OF ALL CONDITIONS"}
 	for _, x := range a.Worst {
-		text := fmt.Sprintf("%s: %s before, %s after, of %s", x.What, worstFigure(x.Before, x.Unit, u), worstFigure(x.After, x.Unit, u), worstPlace(x.After))
+		before, after := worstFigure(x.Before, x.Unit, u)+" before", worstFigure(x.After, x.Unit, u)+" after"
+		text := fmt.Sprintf("%s: %s, %s%s", x.What, before, after, worstPlace(x.After))
 		if x.Before.On != x.After.On || x.Before.Condition != x.After.Condition {
-			text = fmt.Sprintf("%s: %s before, of %s; %s after, of %s", x.What, worstFigure(x.Before, x.Unit, u), worstPlace(x.Before), worstFigure(x.After, x.Unit, u), worstPlace(x.After))
+			text = fmt.Sprintf("%s: %s%s; %s%s", x.What, before, worstPlace(x.Before), after, worstPlace(x.After))
 		}
 		lines = append(lines, wrap("  ", "    ", text)...)
 	}
@@ -256,9 +258,9 @@ func worstFigure(x study.Worst, unit string, u Units) string {
 
 func worstPlace(x study.Worst) string {
 	if !x.Value.Known() {
-		return "any"
+		return ""
 	}
-	return fmt.Sprintf("%s in %q", x.On, x.Condition)
+	return fmt.Sprintf(", of %s in %q", x.On, x.Condition)
 }
 
 // change writes a difference with its sign, or a dash.

@@ -40,17 +40,18 @@ func CompareFiles(a *study.Comparison, o Output) ([]File, error) {
 // pump whose head can be taken apart what each element on the way loses, and the hydraulic grade.
 func comparePlots(a *study.Comparison, c *study.ConditionComparison, u Units, stem string) (all []plot) {
 	title := fmt.Sprintf("%s with %s: %s", a.Job, a.Change, c.Condition)
-	if chart, has := systemsChart(c, title, u); has {
-		all = append(all, plot{stem + "-systems", "Both system curves on the pump curves in " + c.Condition, chart.Write, nil})
+	pairs := picturePairs(c.Pictures())
+	taken := map[string]bool{}
+	for _, p := range pairs {
+		chart := systemsChart(p, title, u)
+		all = append(all, plot{stem + "-systems" + ofSeveral(len(pairs), p.name(), taken), "System curves of " + p.name() + " before and after on the pump curve in " + c.Condition, chart.Write, nil})
 	}
 	flows := flowsChart(c, title, u)
 	all = append(all, plot{stem + "-flows", "Flow by run before and after in " + c.Condition, sized(flows.Write), pairGrid(flows)})
 	shown := c.PathsToDraw()
+	taken = map[string]bool{}
 	for _, p := range shown {
-		suffix := ""
-		if len(shown) > 1 {
-			suffix = "-" + fileStem(p.Pump, map[string]bool{})
-		}
+		suffix := ofSeveral(len(shown), p.Pump, taken)
 		losses, grade := lossesChart(p, title, u), gradeChart(p, title, u)
 		all = append(all, plot{stem + "-losses" + suffix, "Loss by element on the way of " + p.Pump + " in " + c.Condition, sized(losses.Write), pairGrid(losses)},
 			plot{stem + "-grade" + suffix, "Hydraulic grade on the way of " + p.Pump + " in " + c.Condition, sized(grade.Write), nil})
@@ -72,37 +73,66 @@ func pairGrid(c plots.PairChart) *grid {
 	return g
 }
 
-// systemsChart lays what the system asks before and after on the pump curves. There is none where no pump runs.
-func systemsChart(c *study.ConditionComparison, title string, u Units) (chart plots.HeadChart, has bool) {
-	before, after := c.Pictures()
-	chart = plots.HeadChart{Title: title, Subtitle: "pump curves, and what the system asks before and after", Units: plotUnits(u)}
-	several := len(before) > 1 || len(after) > 1
-	name := func(side string, p study.Picture) string {
-		if several {
-			return "system of " + p.Name + " " + side
-		}
-		return "system " + side
+// ofSeveral is what a file's name says of a pump, where there is a file for more than one.
+func ofSeveral(count int, pump string, taken map[string]bool) string {
+	if count < 2 {
+		return ""
 	}
-	for _, p := range after {
-		chart.Pumps = append(chart.Pumps, plots.PumpLine{Line: line(p.Name, p.Flow, p.Head), Digitised: line("", p.DigitisedFlow, p.DigitisedHead),
-			Beyond: []plots.Line{line("", p.BeyondFlow, p.BeyondHead)}})
-		chart.Systems = append(chart.Systems, line(name("after", p), p.SystemFlow, p.SystemHead))
-		chart.Duty = append(chart.Duty, dutyMark(p, "after", several, u))
-	}
-	for _, p := range before {
-		if !slices.ContainsFunc(after, func(q study.Picture) bool { return slices.Equal(p.Flow, q.Flow) && slices.Equal(p.Head, q.Head) }) {
-			chart.FormerPumps = append(chart.FormerPumps, line(p.Name+" before", p.Flow, p.Head))
-		}
-		chart.FormerSystems = append(chart.FormerSystems, line(name("before", p), p.SystemFlow, p.SystemHead))
-		chart.FormerDuty = append(chart.FormerDuty, dutyMark(p, "before", several, u))
-	}
-	return chart, len(before)+len(after) > 0
+	return "-" + fileStem(pump, taken)
 }
 
-func dutyMark(p study.Picture, side string, several bool, u Units) plots.Mark {
-	if several {
-		side = p.Name + " " + side
+// picturePair is what one pump, or several that do the same, shows before and after; nil where it does not run.
+type picturePair struct{ before, after *study.Picture }
+
+func (p picturePair) name() string {
+	if p.after != nil {
+		return p.after.Name
 	}
+	return p.before.Name
+}
+
+// picturePairs brings the pictures of both sides together by the pumps they are of.
+func picturePairs(before, after []study.Picture) (pairs []picturePair) {
+	share := func(a, b study.Picture) bool {
+		return slices.ContainsFunc(strings.Split(a.Name, ", "), func(name string) bool { return slices.Contains(strings.Split(b.Name, ", "), name) })
+	}
+	for i := range after {
+		pair := picturePair{after: &after[i]}
+		for k := range before {
+			if pair.before == nil && share(before[k], after[i]) {
+				pair.before = &before[k]
+			}
+		}
+		pairs = append(pairs, pair)
+	}
+	for k := range before {
+		if !slices.ContainsFunc(after, func(p study.Picture) bool { return share(before[k], p) }) {
+			pairs = append(pairs, picturePair{before: &before[k]})
+		}
+	}
+	return pairs
+}
+
+// systemsChart lays what the system asks before and after on the pump curve, and on that of before where it was another.
+func systemsChart(pair picturePair, title string, u Units) plots.HeadChart {
+	chart := plots.HeadChart{Title: title, Subtitle: "pump curve, and what the system asks before and after", Units: plotUnits(u)}
+	if p := pair.after; p != nil {
+		chart.Pumps = append(chart.Pumps, plots.PumpLine{Line: line(p.Name, p.Flow, p.Head), Digitised: line("", p.DigitisedFlow, p.DigitisedHead),
+			Beyond: []plots.Line{line("", p.BeyondFlow, p.BeyondHead)}})
+		chart.Systems = append(chart.Systems, line("system after", p.SystemFlow, p.SystemHead))
+		chart.Duty = append(chart.Duty, dutyMark(*p, "after", u))
+	}
+	if p := pair.before; p != nil {
+		if pair.after == nil || !slices.Equal(p.Flow, pair.after.Flow) || !slices.Equal(p.Head, pair.after.Head) {
+			chart.FormerPumps = append(chart.FormerPumps, line(p.Name+" before", p.Flow, p.Head))
+		}
+		chart.FormerSystems = append(chart.FormerSystems, line("system before", p.SystemFlow, p.SystemHead))
+		chart.FormerDuty = append(chart.FormerDuty, dutyMark(*p, "before", u))
+	}
+	return chart
+}
+
+func dutyMark(p study.Picture, side string, u Units) plots.Mark {
 	return plots.Mark{Name: p.Name, Flow: p.DutyFlow, Value: p.DutyHead, Label: fmt.Sprintf("%s: %s %s, %s %s", side,
 		u.Text(study.Figure(p.DutyFlow*3600), "m3/h", 0), u.Unit("m3/h"), u.Text(study.Figure(p.DutyHead), "m", 1), u.Unit("m"))}
 }

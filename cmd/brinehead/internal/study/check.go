@@ -355,7 +355,10 @@ func (c *Condition) warn() {
 	}
 	weight := s.Water.Density * fluids.Gravity
 	for i, p := range s.Network.Points {
-		if margin := (s.Atmosphere + s.GaugePressure(i) - s.Water.VapourPressure) / weight; margin < boilingMargin && !p.Fixed {
+		margin := (s.Atmosphere + s.GaugePressure(i) - s.Water.VapourPressure) / weight
+		if margin < 0 && !p.Fixed {
+			c.remarks = append(c.remarks, fmt.Sprintf("%s boils: its pressure would lie %.1f m under that of the vapour, which no gauge shows; the flows of this condition are not reached", p.Name, -margin))
+		} else if margin < boilingMargin && !p.Fixed {
 			c.remarks = append(c.remarks, fmt.Sprintf("%s is near boiling: %.1f m over the vapour pressure, less than %g m (common practice)", p.Name, margin, boilingMargin))
 		}
 	}

@@ -4,6 +4,7 @@ import (
 	"encoding/json"
 	"fmt"
 	"math"
+	"os"
 	"path/filepath"
 	"strings"
 	"testing"
@@ -219,10 +220,12 @@ func TestReadingsWording(t *testing.T) {
 	}
 	for _, want := range []string{
 		"ON ITS CURVE: P1 in \"ballast, tropics\": head ",
-		"NOT ON ITS CURVE: P2 in \"ballast, tropics\": head -19.4 % of the curve's, +/-3.3\n",
+		"NOT ON ITS CURVE: P2 in \"ballast, tropics\": head -13.7 % of the curve's, +/-3.0\n",
+		"    pump P2 is worn: 14.1 % of the head lost; chi-square ",
+		"speed of P2 would tell it from the best",
 		"GAUGE OUT: suction gauge of P2 in \"loaded, North Sea winter\": at rest the gauge\n",
-		"    suction gauge: 0.120 +/-0.027 bar\n",
-		"    flow of PUMP 1 DELIVERY       407  395   419\n",
+		"    suction gauge: 0.104 +/-0.027 bar\n",
+		"    flow of PUMP 1 DELIVERY       440  428   452\n",
 		"of two, nothing says which is wrong",
 	} {
 		if !strings.Contains(out, want) {
@@ -321,5 +324,42 @@ func TestReadingsAtTheEdges(t *testing.T) {
 	}
 	if unused := a.Conditions[0].Unused; len(unused) != 1 || unused[0] != "flow of HIGH SUCTION: it is on no running pump, nor on its way" {
 		t.Errorf("%q", unused)
+	}
+}
+
+// The form has the columns of readings.csv, so that filled in it is one; the card has the figures of check.
+func TestReadingSheetAndCard(t *testing.T) {
+	code, out, _ := brinehead("readings", "--sheet", seawater, "--format", "csv")
+	if code != exitMet || !strings.HasPrefix(out, "condition,quantity,on,value,unit,gauge elevation [m],uncertainty,bore [mm],") || !strings.Contains(out, "\n,suction gauge,P1,,bar,2.5,,261,") || !strings.Contains(out, "-1 to ") {
+		t.Errorf("exit code %d\n%s", code, out)
+	}
+	checked, _ := checkJSON(t, seawater, "--condition", "ballast, tropics")
+	code, out, _ = brinehead("readings", "--card", seawater, "--condition", "ballast, tropics", "--format", "json")
+	var card study.ReadingSheet
+	if err := json.Unmarshal([]byte(out), &card); err != nil || code != exitMet {
+		t.Fatalf("exit code %d, %v", code, err)
+	}
+	found := 0
+	for _, r := range card.Rows {
+		if p := checked.Conditions[0].Pumps[0]; r.On == "P1" && (r.Quantity == "flow" && r.Low == p.Flow || r.Quantity == "motor current" && r.Low == p.MotorCurrent) {
+			found++
+		}
+	}
+	if found != 2 {
+		t.Errorf("%+v", card.Rows)
+	}
+	folder := t.TempDir()
+	for _, args := range [][]string{{"--sheet"}, {"--card"}} {
+		if code, _, stderr := brinehead(append(append([]string{"readings"}, args...), seawater, "--out", folder)...); code != exitMet || stderr != "" {
+			t.Errorf("exit code %d, %s", code, stderr)
+		}
+	}
+	for _, name := range []string{"reading-sheet.csv", "reading-sheet.html", "reading-sheet.pdf", "reading-card.csv", "reading-card.html", "reading-card.pdf"} {
+		if content, err := os.ReadFile(filepath.Join(folder, name)); err != nil || len(content) < 300 {
+			t.Errorf("%s: %d bytes, %v", name, len(content), err)
+		}
+	}
+	if code, _, stderr := brinehead("readings", "--card", "--sheet", seawater); code != exitInput || !strings.Contains(stderr, "--sheet and --card are two things") {
+		t.Errorf("exit code %d, %s", code, stderr)
 	}
 }

@@ -134,7 +134,7 @@ func TestGoldenImages(t *testing.T) {
 	out := t.TempDir()
 	for _, args := range [][]string{
 		{"check", seawater, "--condition", "ballast, tropics, fouled strainer"}, {"suction", seawater, "--condition", "ballast, tropics, fouled strainer", "--pump", "P1"},
-		{"trim", seawater}, {"pump", freshwater}, {"compare", seawater, filepath.Join(changes, "pipe-renewal"), "--condition", "ballast, tropics"},
+		{"trim", seawater}, {"pump", freshwater}, {"readings", seawater, "--change", filepath.Join(changes, "harbour-readings")}, {"compare", seawater, filepath.Join(changes, "pipe-renewal"), "--condition", "ballast, tropics"},
 	} {
 		if code, _, stderr := brinehead(append(args, "--out", out, "--type", "png")...); code > exitNotMet || stderr != "" {
 			t.Fatalf("%v: exit code %d, %s", args, code, stderr)
@@ -150,7 +150,9 @@ func TestGoldenImages(t *testing.T) {
 		"trim-curve.png":                                "trim-curve.png",
 		"trim-energy.png":                               "trim-energy.png",
 		"pump-curve.png":                                "p1-p2-curve.png",
-		"compare-losses.png":                            "ballast-tropics-losses.png",
+		"readings-flows.png":                            "ballast-tropics-p1-flows.png",
+		"pipe-renewal-ballast-tropics-losses.png":       "ballast-tropics-losses.png",
+		"pipe-renewal-ballast-tropics-systems.png":      "ballast-tropics-systems.png",
 	} {
 		want, got := readPNG(t, filepath.Join(testdata, "..", "docs", shown)), readPNG(t, filepath.Join(out, drawn))
 		if share := differing(want, got); share > 0.001 {

@@ -40,7 +40,8 @@ type ConditionReadings struct {
 	NotKnown  string         `json:"not_known"` // why the calculation has no figures; empty where it has
 	Pumps     []PumpReadings `json:"pumps"`
 	Gauges    []GaugeReading `json:"gauges"`
-	Unused    []string       `json:"unused"` // readings that say nothing here, with the reason
+	Unused    []string       `json:"unused"`      // readings that say nothing here, with the reason
+	Explained *Explanation   `json:"explanation"` // null where there are too few readings, or no figures
 }
 
 // Measured is a figure with its uncertainty.
@@ -91,6 +92,8 @@ type FlowEstimate struct {
 	High  Figure `json:"high_m3h"`
 	Curve bool   `json:"rests_on_curve"` // read off the pump's own curve: it cannot say whether the pump is on it
 	Note  string `json:"note"`
+
+	Shared bool `json:"by_calculated_share"` // of a run that carries other water too: it rests on the calculation
 
 	uncertainty float64 // m3/h; NaN where a bound is not known, and then the estimate has no weight
 }
@@ -262,6 +265,7 @@ func (b *bench) read() ConditionReadings {
 		}
 		out.Unused = append(out.Unused, r.name()+": "+why)
 	}
+	out.Explained = b.explain()
 	return out
 }
 
@@ -303,6 +307,9 @@ func (b *bench) pump(i int) PumpReadings {
 	out.Estimates = append(out.Estimates, b.meters(i, u)...)
 	out.Mean, out.Agreement = agree(out.Estimates)
 	own := slices.DeleteFunc(slices.Clone(out.Estimates), func(e FlowEstimate) bool { return e.Curve })
+	if direct := slices.DeleteFunc(slices.Clone(own), func(e FlowEstimate) bool { return e.Shared }); len(direct) > 0 {
+		own = direct // a meter on the pump's own flow goes before one that needs the calculation
+	}
 	out.Curve.Flow, _ = agree(own)
 	if out.Head != nil {
 		out.Head.settle(out)
@@ -568,12 +575,12 @@ func (b *bench) meters(pump int, u curves.Pump) (list []FlowEstimate) {
 		default:
 			continue
 		}
-		share, note, on := b.share(pump, u, run)
+		share, note, direct, on := b.share(pump, u, run)
 		if !on {
 			continue
 		}
 		b.used[k] = true
-		e.Flow, e.uncertainty = e.Flow*Figure(share), e.uncertainty*math.Abs(share)
+		e.Flow, e.uncertainty, e.Shared = e.Flow*Figure(share), e.uncertainty*math.Abs(share), !direct
 		e.Note = strings.TrimPrefix(strings.Join([]string{e.Note, note}, "; "), "; ")
 		e.Note = strings.TrimSuffix(e.Note, "; ")
 		list = append(list, e.banded())
@@ -653,32 +660,32 @@ func (b *bench) drop(run int, r reading) FlowEstimate {
 
 // share is a pump's flow over that of a run: 1 where the run alone is joined to its flange, or else what is calculated for a run
 // on its way.
-func (b *bench) share(pump int, u curves.Pump, run int) (share float64, note string, on bool) {
+func (b *bench) share(pump int, u curves.Pump, run int) (share float64, note string, direct, on bool) {
 	if run < 0 {
-		return 0, "", false
+		return 0, "", false, false
 	}
 	c := b.condition
 	r := c.built.Network.Runs[run]
 	for _, flange := range []int{u.From, u.To} {
 		if _, runs := b.bore(flange); runs == 1 && (r.From == flange || r.To == flange) {
 			if forward := r.To == u.From || r.From == u.To; !forward {
-				return -1, "", true
+				return -1, "", true, true
 			}
-			return 1, "", true
+			return 1, "", true, true
 		}
 	}
 	if c.unknownWhy() != "" || math.Abs(c.solved.RunFlows[run]) < atRest {
-		return 0, "", false
+		return 0, "", false, false
 	}
 	onWay := slices.ContainsFunc(c.wayOf(u.Name), func(s step) bool { return !s.pump && sameName(s.name, r.Name) })
 	if !onWay {
-		return 0, "", false
+		return 0, "", false, false
 	}
 	share = c.solved.PumpFlows[pump] / c.solved.RunFlows[run]
 	if math.Abs(share-1) < 0.001 { // no meter tells that apart
-		return share, "", true
+		return share, "", false, true
 	}
-	return share, fmt.Sprintf("%s carries %.3g times the flow of the pump, as calculated", r.Name, 1/share), true
+	return share, fmt.Sprintf("%s carries %.3g times the flow of the pump, as calculated", r.Name, 1/share), false, true
 }
 
 // agree is the weighted mean of the estimates that have weight, and whether they agree.
@@ -738,6 +745,10 @@ func (v *CurveVerdict) judge(u curves.Pump, h *HeadReading, estimates []FlowEsti
 	v.CurveHead, v.Departure, v.Verdict = unknown, Measured{unknown, unknown}, NotJudged
 	if !v.Flow.Value.Known() {
 		v.Reason = "gauges alone cannot decide: nothing measures the flow beside the pump's own curve"
+		if measured := slices.ContainsFunc(estimates, func(e FlowEstimate) bool { return !e.Curve }); measured {
+			v.Reason = "the flows measured beside the pump's own curve disagree, and nothing says which is right"
+			return
+		}
 		for _, e := range estimates {
 			if e.Curve && e.Low.Known() && e.High.Known() {
 				v.Reason += fmt.Sprintf("; %s would have it between %.0f and %.0f m3/h", e.By, float64(e.Low), float64(e.High))

@@ -52,6 +52,34 @@ func TestNPSHLinesAddUp(t *testing.T) {
 	}
 }
 
+// The suction gauge at the pump's datum, by hand: p = (NPSHA - (patm - pv)/rho g) rho g less the velocity head, in 261 mm; and an alarm
+// that keeps a fifth of the rise of the drop in hand, with the vacuum in mmHg.
+func TestSuctionGaugeAndAlarm(t *testing.T) {
+	const condition = "ballast, tropics, fouled strainer"
+	answer, _ := suctionJSON(t, seawater, "--condition", condition, "--allowance", "20")
+	checked, _ := checkJSON(t, seawater, "--condition", condition)
+	p, w := answer.Cases[0].Pumps[0], checked.Conditions[0].Water
+	density := float64(w.Density)
+	v := float64(p.Flow) / 3600 / (math.Pi / 4 * 0.261 * 0.261)
+	want := (float64(p.Available)*density*9.80665 - (101325 - float64(w.VapourPressure)) - density*v*v/2) / 1e5
+	if got := float64(p.Gauge.Pressure); !(math.Abs(got-want) < 1e-5) || !(math.Abs(float64(p.Gauge.Vacuum)+got*1e5/133.322387415) < 1e-3) {
+		t.Errorf("gauge %g bar, %g mmHg, by hand %g bar", got, float64(p.Gauge.Vacuum), want)
+	}
+	s := answer.Cases[0].Strainers[0]
+	if want := float64(s.Clean.Drop) + 0.8*float64(s.Limit.Drop-s.Clean.Drop); !(math.Abs(float64(s.Alarm.Drop)-want) < 1e-6) {
+		t.Errorf("alarm at %g bar, want %g", float64(s.Alarm.Drop), want)
+	}
+	higher := copyJob(t, seawater, [3]string{"pumps.csv", "design pressure [bar]", "design pressure [bar],suction gauge elevation [m]"}, [3]string{"pumps.csv", ",0.86,6\n", ",0.86,6,4.5\n"})
+	up, _ := suctionJSON(t, higher, "--condition", condition)
+	if got, want := float64(up.Cases[0].Pumps[0].Gauge.Pressure), float64(p.Gauge.Pressure)-2*density*9.80665e-5; !(math.Abs(got-want) < 1e-6) {
+		t.Errorf("two metres higher the gauge shows %g bar, want %g", got, want)
+	}
+	idle, code := suctionJSON(t, copyJob(t, seawater, [3]string{"conditions.csv", "9.2,P1 P2,", "9.2,none,"}), "--condition", "loaded, tropics")
+	if code != exitNotMet || len(idle.Cases[0].Pumps) != 0 {
+		t.Errorf("no pump runs: exit code %d", code)
+	}
+}
+
 // A strainer's limit put back into `check` as its blockage: the limit that governs is met to within 1e-6 m, and a little more blockage
 // breaks it.
 func TestStrainerLimitFedBack(t *testing.T) {

@@ -527,8 +527,11 @@ func (a *Suction) worst() *WorstCell {
 	return worst
 }
 
-// Met says whether every running pump keeps its margin in every case.
+// Met says whether every running pump keeps its margin in every case; where none runs nothing is shown.
 func (a *Suction) Met() bool {
+	if !slices.ContainsFunc(a.Cases, func(c SuctionCase) bool { return len(c.Pumps) > 0 }) {
+		return false
+	}
 	for _, c := range a.Cases {
 		if c.Reason != "" {
 			return false
